@@ -27,7 +27,7 @@ func (f *File) compile() (*Scenario, error) {
 	if err != nil {
 		return nil, err
 	}
-	s := &Scenario{Title: f.Title, Tolerance: f.Tolerance}
+	s := &Scenario{Title: line(f.Title), Tolerance: f.Tolerance}
 	if s.Structure, err = c.structure(); err != nil {
 		return nil, err
 	}
@@ -78,7 +78,7 @@ func (f *File) compiler() (*compiler, error) {
 	}
 	kinetic := f.Packet.Energy.Base() - source.Height
 	if !(kinetic > 0) {
-		at := f.in(source.Height, f.Packet.Energy).round(0).String()
+		at := f.inUnitOf(f.Packet.Energy, source.Height).round(0).String()
 		return nil, &fault{
 			at: f.Packet.Energy.at, key: "packet.energy",
 			msg:      fmt.Sprintf("%q is not above the height of the %s, %s: the packet could not move there", f.Packet.Energy, name, at),

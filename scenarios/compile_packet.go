@@ -19,7 +19,7 @@ func (c *compiler) packet(width float64) (Packet, error) {
 		return p, err
 	}
 	p.Start, err = c.position(spec.Start, "packet.start", p.behind(apart*p.Length, width), p,
-		"leaves the packet less than 4 lengths clear of the structure")
+		fmt.Sprintf("leaves the packet less than %d lengths clear of the structure", apart))
 	return p, err
 }
 
@@ -38,11 +38,11 @@ func (c *compiler) packetLength() (float64, error) {
 func (c *compiler) planes(p Packet, width float64) (out Planes, err error) {
 	spec := &c.file.Planes
 	if spec.Near.Given {
-		limit, msg := p.behind(2*apart*p.Length, width), "leaves no room for a packet 4 lengths clear of it and of the structure"
+		limit, msg := p.behind(2*apart*p.Length, width), "leaves no room for a packet %d lengths clear of it and of the structure"
 		if p.Start != nil {
-			limit, msg = p.behind(p.depth(width)+apart*p.Length, width), "does not lie 4 lengths of the packet behind its start"
+			limit, msg = p.behind(p.depth(width)+apart*p.Length, width), "does not lie %d lengths of the packet behind its start"
 		}
-		if out.Near, err = c.position(spec.Near, "planes.near", limit, p, msg); err != nil {
+		if out.Near, err = c.position(spec.Near, "planes.near", limit, p, fmt.Sprintf(msg, apart)); err != nil {
 			return out, err
 		}
 	}
@@ -93,13 +93,13 @@ func (c *compiler) position(q Quantity, key string, b bound, p Packet, msg strin
 	if b.above && x >= b.x-slack || !b.above && x <= b.x+slack {
 		return &x, nil
 	}
-	return nil, &fault{at: q.at, key: key, msg: fmt.Sprintf("%q %s", q, msg), accepted: c.file.from(b, b.x*c.length, q)}
+	return nil, &fault{at: q.at, key: key, msg: fmt.Sprintf("%q %s", q, msg), accepted: c.file.orBeyond(b, b.x*c.length, q)}
 }
 
-// from is the sentence about the nearest accepted position.
-func (f *File) from(b bound, base float64, like Quantity) string {
+// orBeyond is the sentence about the nearest accepted position.
+func (f *File) orBeyond(b bound, base float64, like Quantity) string {
 	if b.above {
-		return f.in(base, like).round(1).String() + " or more is accepted"
+		return f.inUnitOf(like, base).round(1).String() + " or more is accepted"
 	}
-	return f.in(base, like).round(-1).String() + " or less is accepted"
+	return f.inUnitOf(like, base).round(-1).String() + " or less is accepted"
 }

@@ -1,9 +1,9 @@
 package scenarios
 
 import (
+	"bytes"
 	"embed"
 	"fmt"
-	"io/fs"
 	"path"
 	"strings"
 )
@@ -13,51 +13,67 @@ var demoFiles embed.FS
 
 // Demo is a scenario that comes with the program.
 type Demo struct {
-	Name  string // collector-step
-	Title string
-	Text  string // the file, to start one's own from
+	Name   string // such as collector-step
+	Title  string
+	Text   string      // the file, to start one's own from
+	Tables []DemoTable // that the file refers to
 }
 
-// Demos returns the demos in order of their names.
+// DemoTable is a CSV file that a demo expects beside it.
+type DemoTable struct{ Name, Text string }
+
+// Demos returns the demos in the order of their names.
 func Demos() []Demo {
-	names, err := fs.Glob(demoFiles, "demos/*.toml")
-	if err != nil {
-		panic("scenarios: " + err.Error())
-	}
+	names := demoNames()
 	demos := make([]Demo, len(names))
 	for i, name := range names {
-		demos[i] = demo(strings.TrimSuffix(path.Base(name), ".toml"))
+		f, err := OpenDemo(name)
+		if err != nil {
+			panic("scenarios: a demo is broken: " + err.Error())
+		}
+		demos[i] = Demo{Name: name, Title: f.Title, Text: demoText(name + ".toml"), Tables: demoTables(f)}
 	}
 	return demos
 }
 
-// demo reads one that is known to exist.
-func demo(name string) Demo {
-	text, err := demoFiles.ReadFile(demoPath(name))
-	if err != nil {
-		panic("scenarios: " + err.Error())
+// demoTables collects the tables of a demo.
+func demoTables(f *File) []DemoTable {
+	var tables []DemoTable
+	for i := range f.Layers {
+		if t := f.Layers[i].Table; t != nil {
+			tables = append(tables, DemoTable{t.File, demoText(t.File)})
+		}
 	}
-	f, err := OpenDemo(name)
-	if err != nil {
-		panic("scenarios: demo " + err.Error())
-	}
-	return Demo{Name: name, Title: f.Title, Text: string(text)}
+	return tables
 }
 
-func demoPath(name string) string { return "demos/" + name + ".toml" }
+// demoText returns one of the embedded files.
+func demoText(file string) string {
+	text, err := demoFiles.ReadFile(path.Join("demos", file))
+	if err != nil {
+		panic("scenarios: a demo is broken: " + err.Error())
+	}
+	return string(text)
+}
 
-// demoNames lists the demos without reading them.
+// demoNames lists the demos in order.
 func demoNames() []string {
-	files, _ := fs.Glob(demoFiles, "demos/*.toml")
-	for i, name := range files {
-		files[i] = strings.TrimSuffix(path.Base(name), ".toml")
+	files, err := demoFiles.ReadDir("demos")
+	if err != nil {
+		panic("scenarios: the demos are missing: " + err.Error())
 	}
-	return files
+	var names []string
+	for _, f := range files {
+		if name, ok := strings.CutSuffix(f.Name(), ".toml"); ok {
+			names = append(names, name)
+		}
+	}
+	return names
 }
 
-// OpenDemo reads a demo.
+// OpenDemo reads a demo. The error is an *InputError.
 func OpenDemo(name string) (*File, error) {
-	src, err := demoFiles.Open(demoPath(name))
+	text, err := demoFiles.ReadFile("demos/" + name + ".toml")
 	if err != nil {
 		names := demoNames()
 		return nil, &InputError{
@@ -65,6 +81,5 @@ func OpenDemo(name string) (*File, error) {
 			Accepted: fmt.Sprintf("%saccepted are %s", suggestion(name, names), strings.Join(names, ", ")),
 		}
 	}
-	defer src.Close()
-	return Read(name, src, Within(demoFiles, "demos"))
+	return Read(name, bytes.NewReader(text), Within(demoFiles, "demos"))
 }

@@ -208,7 +208,7 @@ func (q Quantity) To(name string) (Quantity, error) {
 // String returns the quantity as a scenario file states it, without quotation
 // marks.
 func (q Quantity) String() string {
-	digits := strconv.FormatFloat(q.Number, 'g', -1, 64)
+	digits := shortest(q.Number)
 	switch {
 	case q.Unit == "":
 		return digits
@@ -217,3 +217,6 @@ func (q Quantity) String() string {
 	}
 	return digits + " " + q.Unit
 }
+
+// shortest writes a number with as few digits as bring it back.
+func shortest(v float64) string { return strconv.FormatFloat(v, 'g', -1, 64) }

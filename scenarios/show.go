@@ -5,9 +5,9 @@ import (
 	"strconv"
 )
 
-// in states a size, which is in base units, in the unit of a quantity of the
-// file.
-func (f *File) in(base float64, like Quantity) Quantity {
+// inUnitOf states a size, which is in base units, in the unit of a quantity of
+// the file.
+func (f *File) inUnitOf(like Quantity, base float64) Quantity {
 	if like.Unit == "" && !f.Natural {
 		like.Unit = like.Kind.base(false)
 	}
