@@ -1,0 +1,152 @@
+package scenarios
+
+import (
+	"math"
+
+	"fluxtoll/propagate"
+)
+
+// Budget lists the terms of a run's error budget. Each is the largest over the
+// quantities: absolute for probabilities, relative to the time for times.
+type Budget struct {
+	Space    float64 `json:"space"`    // the elements' own scattering against the exact one
+	Time     float64 `json:"time"`     // phase error of the time step
+	Edges    float64 `json:"edges"`    // reflection of the absorbing edges
+	Packet   float64 `json:"packet"`   // overlap at the start, wrong-way components
+	Tail     float64 `json:"tail"`     // what had not left when the run ended
+	Average  float64 `json:"average"`  // quadrature error of the stationary averages
+	Rounding float64 `json:"rounding"` // accumulated rounding of the solves
+}
+
+// terms are the same, by quantity.
+type terms struct{ space, time, edges, packet, tail, average, rounding errorSet }
+
+func (t terms) total() errorSet {
+	return t.space.plus(t.time).plus(t.edges).plus(t.packet).plus(t.tail).plus(t.average).plus(t.rounding)
+}
+
+// terms computes every term of the budget from the run's own operators.
+func (t *Trial) terms() terms {
+	return terms{
+		space: t.Plan.grids.space, edges: t.Plan.grids.edges,
+		time: t.timeTerm(), packet: t.packetTerm(),
+		tail:    t.tail(t.Run.Ledger(), t.Run.Remaining, t.Run.Lifetime),
+		average: t.averageTerm(), rounding: t.roundingTerm(),
+	}
+}
+
+// means are the mean arrivals of the averages.
+func (t *Trial) means() partMeans {
+	a := t.Averages
+	transmitted, reflected := t.averageArrivals()
+	return partMeans{a.Transmitted.Value, a.Reflected.Value, transmitted.Value, reflected.Value}
+}
+
+// timeTerm is the spectrum average of the step's phase error times each time,
+// and the aliasing of a flow sampled once a step: its spectrum at 2 pi/dt.
+func (t *Trial) timeTerm() errorSet {
+	var e errorSet
+	m, p := t.means(), t.Plan
+	for _, s := range p.samples {
+		slope := math.Abs(p.Pade.SlopeError((s.energy - p.Origin) * p.TimeStep))
+		if slope < 1 {
+			slope /= 1 - slope
+		} else {
+			slope = 1
+		}
+		transmitted, reflected := s.arrivals(p.geometry)
+		e.dwell += s.weight * s.Dwell * slope
+		if m.transmitted > leastPart {
+			e.arrivalTransmitted += s.weight * s.Transmission * transmitted * slope / m.transmitted
+		}
+		if m.reflected > leastPart {
+			e.arrivalReflected += s.weight * s.Reflection * reflected * slope / m.reflected
+		}
+	}
+	alias := t.aliasing()
+	return e.plus(t.perPart(alias, alias))
+}
+
+// aliasing is dt times the weight of the packet's flow at the frequency
+// 2 pi/dt, exp(-(2 pi/dt)^2 / (8 sigma^2)), sigma its spread in energy.
+func (t *Trial) aliasing() float64 {
+	packet, dt := t.Scenario.Packet, t.Plan.TimeStep
+	near, _ := t.Scenario.leads()
+	width := 1 / (2 * packet.Length)
+	sigma := (packet.K0 + width/2) * width / near.Mass
+	omega := 2 * math.Pi / dt
+	return dt * math.Exp(-omega*omega/(8*sigma*sigma))
+}
+
+// perPart divides a time-like error by each part's probability, and gives the
+// dwell its own.
+func (t *Trial) perPart(time, dwell float64) errorSet {
+	e := errorSet{dwell: dwell}
+	if a := t.Averages; true {
+		if a.Transmitted.Value > leastPart {
+			e.arrivalTransmitted = time / a.Transmitted.Value
+		}
+		if a.Reflected.Value > leastPart {
+			e.arrivalReflected = time / a.Reflected.Value
+		}
+	}
+	return e
+}
+
+// packetTerm charges the probability that was in the wrong place or moved the
+// wrong way at the start to every part, at a time off by the whole run.
+func (t *Trial) packetTerm() errorSet {
+	o, m := t.Plan.overlap, t.means()
+	e := t.perPart(o*math.Max(m.timeTransmitted, m.timeReflected), o*t.Averages.Dwell.Value)
+	e.transmitted, e.reflected, e.lost = o, o, o
+	return e
+}
+
+// tail charges what remains between the planes to every part. It will come
+// later than now, by about the time in which it decays.
+func (t *Trial) tail(l *propagate.Ledger, remaining, lifetime float64) errorSet {
+	if math.IsInf(lifetime, 1) {
+		lifetime = l.Time
+	}
+	m := t.means()
+	late := func(mean float64) float64 { return remaining * math.Abs(l.Time+lifetime-mean) }
+	inLayers := 0.0
+	for _, p := range l.InLayer {
+		inLayers += p
+	}
+	e := t.perPart(late(math.Min(m.timeTransmitted, m.timeReflected)),
+		inLayers*lifetime+remaining*t.Averages.Dwell.Value)
+	e.transmitted, e.reflected, e.lost = remaining, remaining, remaining
+	return e
+}
+
+// averageTerm is the averages' own error.
+func (t *Trial) averageTerm() errorSet {
+	a := t.Averages
+	transmitted, reflected := t.averageArrivals()
+	return errorSet{
+		transmitted: a.Transmitted.Error, reflected: a.Reflected.Error, lost: a.Lost.Error,
+		arrivalTransmitted: transmitted.Error, arrivalReflected: reflected.Error, dwell: a.Dwell.Error,
+	}
+}
+
+// roundingTerm allows every solve one rounding (2^-53) in the norm, which
+// bounds the drift that the tests measure.
+func (t *Trial) roundingTerm() errorSet {
+	r := float64(t.Run.Ledger().Steps*t.Plan.Pade.Member+16) * 0x1p-53
+	m := t.means()
+	return errorSet{
+		transmitted: r, reflected: r, lost: r, arrivalTransmitted: r * m.timeTransmitted,
+		arrivalReflected: r * m.timeReflected, dwell: r * t.Averages.Dwell.Value,
+	}
+}
+
+// summary reduces the terms to one number each.
+func (t *Trial) summary(list terms) Budget {
+	m := t.means()
+	worst := func(e errorSet) float64 { return e.relative(t.Averages, m) }
+	return Budget{
+		worst(list.space), worst(list.time), worst(list.edges), worst(list.packet),
+		worst(list.tail), worst(list.average), worst(list.rounding),
+	}
+}

@@ -1,0 +1,96 @@
+package scenarios
+
+import (
+	"math"
+
+	"fluxtoll/potential"
+	"fluxtoll/propagate"
+)
+
+// geometry is where the packet starts and where it is measured, as distances
+// from the faces of the structure, seen from the packet's side.
+type geometry struct {
+	side   Side
+	width  float64 // of the structure
+	start  float64 // centre at t = 0, before the near face
+	near   float64 // near plane, before the near face; beyond the start
+	far    float64 // far plane, behind the far face
+	behind float64 // end of the real grid before the near face, >= near
+}
+
+// at turns a distance before the near face into a position.
+func (g geometry) at(before float64) float64 {
+	if g.side == FromRight {
+		return g.width + before
+	}
+	return -before
+}
+
+// before turns a position into a distance before the near face.
+func (g geometry) before(x float64) float64 {
+	if g.side == FromRight {
+		return x - g.width
+	}
+	return -x
+}
+
+// farAt is the position of the far plane.
+func (g geometry) farAt() float64 {
+	if g.side == FromRight {
+		return -g.far
+	}
+	return g.width + g.far
+}
+
+// extent is the geometry as the packet road takes it.
+func (g geometry) extent() propagate.Extent {
+	if g.side == FromRight {
+		return propagate.Extent{Left: -g.far, PlaneLeft: -g.far, PlaneRight: g.width + g.near, Right: g.width + g.behind}
+	}
+	return propagate.Extent{Left: -g.behind, PlaneLeft: -g.near, PlaneRight: g.width + g.far, Right: g.width + g.far}
+}
+
+// leads returns the packet's lead and the far lead.
+func (s *Scenario) leads() (near, far potential.Lead) {
+	if s.Packet.Side == FromRight {
+		return s.Structure.Exit, s.Structure.Entry
+	}
+	return s.Structure.Entry, s.Structure.Exit
+}
+
+// farLengths is how many packet lengths behind the structure the far plane
+// stands when nobody says otherwise: outside the near field, close enough to
+// be reached soon.
+const farLengths = 3
+
+// place chooses what the scenario leaves open. clear is the number of packet
+// lengths at which the packet's tail is negligible.
+func (s *Scenario) place(clear float64) geometry {
+	g := geometry{side: s.Packet.Side, width: s.Structure.Width()}
+	reach := clear * s.Packet.Length
+	g.start = s.roundUp(reach)
+	if s.Packet.Start != nil {
+		g.start = g.before(*s.Packet.Start)
+	}
+	g.near = s.roundUp(g.start + reach)
+	if s.Planes.Near != nil {
+		g.near = g.before(*s.Planes.Near)
+	}
+	g.far = s.roundUp(farLengths * s.Packet.Length)
+	if s.Planes.Far != nil {
+		g.far = *s.Planes.Far - g.width
+		if g.side == FromRight {
+			g.far = -*s.Planes.Far
+		}
+	}
+	g.behind = math.Max(g.near, g.start+reach)
+	return g
+}
+
+// roundUp rounds a length up to two digits in display units, so that chosen
+// positions read well.
+func (s *Scenario) roundUp(x float64) float64 {
+	shown := x * s.Scale.Length
+	unit := math.Pow(10, math.Floor(math.Log10(shown))-1)
+	return math.Ceil(shown/unit) * unit / s.Scale.Length
+}

@@ -1,0 +1,186 @@
+package scenarios
+
+import (
+	"fmt"
+	"math"
+
+	"fluxtoll/potential"
+	"fluxtoll/potential/stationary"
+	"fluxtoll/propagate"
+)
+
+// Plan is the numerics of the packet road for one scenario, chosen from the
+// tolerance and the stationary averages. Everything is in internal units.
+type Plan struct {
+	geometry
+	Low, High float64 // band of energies that the grid resolves
+	Order     int
+	Phase     float64 // |k| h of an element at most
+	Pade      propagate.Pade
+	TimeStep  float64
+	Origin    float64 // energy from which phases are counted
+	Expected  float64 // time at which the run is expected to end
+	Mesh      *propagate.Mesh
+
+	samples []sample
+	grids   gridError
+	overlap float64 // packet term: probability at the start where it should not be
+}
+
+// LimitError says that a run was refused because it would exceed a limit.
+type LimitError struct {
+	What     string // "grid nodes", "time steps", "memory", "work"
+	Estimate float64
+	Limit    float64
+	Flag     string // the flag that lifts the limit
+}
+
+func (e *LimitError) Error() string {
+	return fmt.Sprintf("the packet road would need about %.2g %s; the limit is %.2g; %s lifts it",
+		e.Estimate, e.What, e.Limit, e.Flag)
+}
+
+// The tolerance is shared out among the terms of the budget; what is left is
+// for rounding and for the averages' own error.
+const (
+	shareSpace  = 0.25
+	shareTime   = 0.25
+	shareEdges  = 0.1
+	sharePacket = 0.05
+	shareTail   = 0.1
+)
+
+// leastPart is the smallest transmitted or reflected probability whose arrival
+// the packet road is asked to time: below it the part is rounding in psi.
+const leastPart = 1e-14
+
+// planner holds what the steps of planning share.
+type planner struct {
+	*Plan
+	scenario *Scenario
+	forced   Forced
+	averages *stationary.Averages
+	near     potential.Lead
+	far      potential.Lead
+	smallest float64 // the smaller of the parts that are to be timed
+}
+
+// newPlan makes the plan. The error is a *LimitError where the run would be
+// too large.
+func newPlan(s *Scenario, a *stationary.Averages, forced Forced) (*Plan, error) {
+	forced.Limits = forced.orDefault()
+	p := &planner{Plan: &Plan{}, scenario: s, forced: forced, averages: a, smallest: 1}
+	p.near, p.far = s.leads()
+	for _, part := range []float64{a.Transmitted.Value, a.Reflected.Value} {
+		if part > leastPart {
+			p.smallest = math.Min(p.smallest, part)
+		}
+	}
+	p.positions()
+	p.spectrum()
+	if err := p.grid(); err != nil {
+		return nil, err
+	}
+	if err := p.time(); err != nil {
+		return nil, err
+	}
+	return p.Plan, nil
+}
+
+// positions places start and planes so that the packet's tails are negligible
+// beside the smallest part.
+func (p *planner) positions() {
+	n := clearance(sharePacket * p.scenario.Tolerance * p.smallest)
+	p.geometry = p.scenario.place(n)
+	l := p.scenario.Packet.Length
+	beyond := math.Erfc(p.start/l/math.Sqrt2)/2 + math.Erfc((p.geometry.near-p.start)/l/math.Sqrt2)/2
+	p.overlap = beyond + wrongWay(p.scenario.Packet)
+}
+
+// wrongWay bounds the effect of the components that move away from the
+// structure: their probability erfc(sqrt2 k0 s)/2 and their interference
+// with the mirror components, 2 exp(-2 s^2 k0^2).
+func wrongWay(p Packet) float64 {
+	return math.Erfc(math.Sqrt2*p.K0*p.Length)/2 + 2*math.Exp(-2*p.K0*p.K0*p.Length*p.Length)
+}
+
+// energy is the total energy of a wave number in the packet's lead.
+func (p *planner) energy(k float64) float64 { return p.near.Height + k*k/(2*p.near.Mass) }
+
+// spectrum finds the band and the samples.
+func (p *planner) spectrum() {
+	p.Low, p.High = band(p.averages, p.energy, 1e-2*p.scenario.Tolerance)
+	p.samples = samples(p.averages, p.energy)
+	p.Origin = p.scenario.Packet.Energy
+}
+
+// grid chooses order, element length and edges, and refines until the
+// elements' own scattering is close enough to the exact one.
+func (p *planner) grid() error {
+	p.Order, p.Phase = 12, 8
+	if p.scenario.Tolerance < 1e-8 {
+		p.Order, p.Phase = 16, 9
+	}
+	if p.forced.Order > 0 {
+		p.Order = p.forced.Order
+	}
+	if p.forced.Element > 0 {
+		p.Phase = p.forced.Element * math.Sqrt(2*p.near.Mass*(p.High-p.near.Height))
+	}
+	const refinements = 5
+	for range refinements {
+		if err := p.mesh(); err != nil {
+			return err
+		}
+		p.grids = compareGrid(p.Mesh, p.geometry, p.samples)
+		worst := p.grids.space.relative(p.averages, meanTimes(p.samples, p.geometry))
+		if p.forced.Element > 0 || worst <= shareSpace*p.scenario.Tolerance {
+			return nil
+		}
+		p.Phase *= 0.75
+	}
+	return nil
+}
+
+// mesh builds the mesh for the present order and phase.
+func (p *planner) mesh() error {
+	limit := math.Max(shareEdges*p.scenario.Tolerance/4, 1e-13)
+	nearEdge := p.edge(p.near, limit, func(s sample) float64 { return s.Reflection / p.averages.Reflected.Value })
+	farEdge := p.edge(p.far, limit, func(s sample) float64 { return s.Transmission / p.averages.Transmitted.Value })
+	if p.side == FromRight {
+		nearEdge, farEdge = farEdge, nearEdge
+	}
+	resolution := propagate.Resolution{
+		Order: p.Order, Phase: p.Phase, Low: p.Low, High: p.High,
+		Height:   1e-2 * p.scenario.Tolerance * (p.scenario.Packet.Energy - p.near.Height),
+		MaxNodes: p.forced.Nodes,
+	}
+	layout, err := propagate.NewLayout(p.scenario.Structure, resolution, p.extent(), nearEdge, farEdge)
+	if err != nil {
+		if size, ok := err.(*propagate.SizeError); ok {
+			return &LimitError{"grid nodes", size.Nodes, float64(size.Limit), "--max-nodes"}
+		}
+		return err
+	}
+	if bytes := layout.Bytes(); bytes > float64(p.forced.Bytes) {
+		return &LimitError{"bytes of memory", bytes, float64(p.forced.Bytes), "--max-memory"}
+	}
+	p.Mesh = propagate.NewMesh(layout)
+	return nil
+}
+
+// edge chooses an edge for a lead; share is what part of its outgoing wave an
+// energy makes up.
+func (p *planner) edge(lead potential.Lead, limit float64, share func(sample) float64) propagate.Edge {
+	var goals []propagate.EdgeGoal
+	for _, s := range p.samples {
+		if w := s.weight * share(s); w > 0 && !math.IsInf(w, 0) {
+			goals = append(goals, propagate.EdgeGoal{Energy: s.energy, Weight: w})
+		}
+	}
+	e := propagate.ChooseEdge(lead, p.Order, goals, limit)
+	if p.forced.Edge > 0 {
+		e.Count = p.forced.Edge
+	}
+	return e
+}

@@ -1,0 +1,168 @@
+package scenarios
+
+import (
+	"math"
+	"time"
+
+	"fluxtoll/potential/stationary"
+	"fluxtoll/propagate"
+)
+
+// Result is the answer to a scenario, in display units. Its JSON is the
+// document that `run --json` prints.
+type Result struct {
+	Format     string    `json:"format"`
+	Title      string    `json:"title"`
+	Units      Units     `json:"units"`
+	Tolerance  float64   `json:"tolerance"`
+	Quantities []Measure `json:"quantities"`
+	Ledger     *Ledger   `json:"ledger"`
+	Budget     *Budget   `json:"budget"`
+	Planes     *PlanesAt `json:"planes"`
+	Numerics   *Numerics `json:"numerics"`
+	Notes      []string  `json:"notes,omitempty"`
+	Verdict    Verdict   `json:"verdict"`
+	Ended      string    `json:"ended"` // why the packet road ended
+	Seconds    float64   `json:"seconds"`
+}
+
+// Units names the display units; empty in natural units.
+type Units struct {
+	Length string `json:"length"`
+	Energy string `json:"energy"`
+	Time   string `json:"time"`
+}
+
+// Measure is one quantity in the three columns. A column without a value is
+// nil (null in JSON).
+type Measure struct {
+	Name         string   `json:"name"`
+	Unit         string   `json:"unit"`
+	PlaneWave    *float64 `json:"plane_wave"`
+	Average      *float64 `json:"average"`
+	AverageError *float64 `json:"average_error"`
+	Packet       *float64 `json:"packet"`
+	Difference   *float64 `json:"difference"` // packet - average
+	Budget       *float64 `json:"budget"`
+	Allowed      float64  `json:"allowed"` // the tolerance, in this quantity's unit
+	Agrees       bool     `json:"agrees"`
+}
+
+// Ledger says where the probability is.
+type Ledger struct {
+	Reflected   float64 `json:"reflected"`
+	Transmitted float64 `json:"transmitted"`
+	Lost        float64 `json:"lost"`
+	Trapped     float64 `json:"trapped"`
+	Closure     float64 `json:"closure"` // 1 - the sum of the four
+}
+
+// PlanesAt are the positions that mattered.
+type PlanesAt struct {
+	Near  float64 `json:"near"`
+	Far   float64 `json:"far"`
+	Start float64 `json:"start"`
+}
+
+// Verdict is the outcome of the comparison.
+type Verdict string
+
+// The verdicts.
+const (
+	Agrees      Verdict = "agrees"
+	Disagrees   Verdict = "disagrees"
+	NotReached  Verdict = "tolerance not reached"
+	Incomplete  Verdict = "interrupted"
+	resultLabel         = "fluxtoll.run/1"
+)
+
+// Result compares the columns as they stand. status is why the packet road
+// ended.
+func (t *Trial) Result(status propagate.Status) *Result {
+	s := t.Scenario.Scale
+	r := &Result{
+		Format: resultLabel, Title: t.Scenario.Title,
+		Units:     Units{s.LengthUnit, s.EnergyUnit, s.TimeUnit},
+		Tolerance: t.Scenario.Tolerance, Ended: status.String(),
+		Seconds: time.Since(t.started).Seconds(),
+	}
+	var limits *errorSet
+	if t.Run != nil {
+		list := t.terms()
+		total, summary, ledger := list.total(), t.summary(list), t.ledger()
+		limits, r.Budget, r.Ledger = &total, &summary, &ledger
+		p := t.Plan
+		r.Planes = &PlanesAt{p.at(p.near) * s.Length, p.farAt() * s.Length, p.at(p.start) * s.Length}
+		numerics := t.numerics()
+		r.Numerics = &numerics
+	}
+	r.Quantities = t.measures(limits)
+	r.Notes = t.notes()
+	r.Verdict = t.verdict(r, status)
+	return r
+}
+
+// verdict reads the outcome off the quantities.
+func (t *Trial) verdict(r *Result, status propagate.Status) Verdict {
+	if status == propagate.Interrupted || status == propagate.Running && t.Run != nil {
+		return Incomplete
+	}
+	verdict := Agrees
+	if t.Run == nil || t.unsettled != nil {
+		verdict = NotReached
+	}
+	for _, q := range r.Quantities {
+		if q.Budget == nil {
+			continue
+		}
+		if !(math.Abs(*q.Difference) <= *q.Budget) {
+			return Disagrees
+		}
+		if !(*q.Budget <= q.Allowed) {
+			verdict = NotReached
+		}
+	}
+	return verdict
+}
+
+// ledger reads the packet road's ledger, near and far instead of left and
+// right.
+func (t *Trial) ledger() Ledger {
+	l := t.Run.Ledger()
+	near, far := t.passages()
+	out := Ledger{
+		Reflected: near.Probability, Transmitted: far.Probability,
+		Lost: l.TotalLost(), Trapped: t.Run.Inside(),
+	}
+	out.Closure = 1 - (out.Reflected + out.Transmitted + out.Lost + out.Trapped)
+	return out
+}
+
+// passages are what has passed the near and the far plane.
+func (t *Trial) passages() (near, far propagate.Passage) {
+	l := t.Run.Ledger()
+	if t.Plan.side == FromRight {
+		return l.Right, l.Left
+	}
+	return l.Left, l.Right
+}
+
+// averageArrivals are the mean arrivals at the planes on the stationary road.
+func (t *Trial) averageArrivals() (transmitted, reflected stationary.Mean) {
+	a, p := t.Averages, t.Plan
+	if a.Transmitted.Value > 0 {
+		transmitted = combine(a.GroupDelayTransmitted, p.start, a.SlownessInTransmitted, p.far, a.SlownessOutTransmitted)
+	}
+	if a.Reflected.Value > 0 {
+		reflected = combine(a.GroupDelayReflected, p.start+p.near, a.SlownessInReflected, 0, stationary.Mean{})
+	}
+	return transmitted, reflected
+}
+
+// combine adds flights to a delay; the errors add up.
+func combine(delay stationary.Mean, in float64, slowIn stationary.Mean, out float64, slowOut stationary.Mean) stationary.Mean {
+	return stationary.Mean{
+		Value: delay.Value + in*slowIn.Value + out*slowOut.Value,
+		Error: delay.Error + in*slowIn.Error + out*slowOut.Error,
+	}
+}
