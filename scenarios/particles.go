@@ -1,5 +1,7 @@
 package scenarios
 
+import "strings"
+
 // particles are the names a mass may be given by. The masses of neutron and
 // proton are those of CODATA 2022. Those of the atoms are in u, from AME2020
 // (M. Wang et al., Chinese Phys. C 45, 030003 (2021)), rounded to their
@@ -20,8 +22,12 @@ func particles() []unit {
 	}
 }
 
-// isParticle reports whether name is a particle's.
-func isParticle(name string) bool {
-	_, ok := find(particles(), name)
-	return ok
+// particleNames lists them.
+func particleNames() []string { return names(particles()) }
+
+// isName reports whether a text could be meant as a particle's name: it starts
+// with a letter and is no number that other programs know.
+func isName(text string) bool {
+	lower := strings.ToLower(text)
+	return lower != "" && 'a' <= lower[0] && lower[0] <= 'z' && !strings.HasPrefix(lower, "nan") && !strings.HasPrefix(lower, "inf")
 }

@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"slices"
 	"strconv"
 	"strings"
 )
@@ -38,9 +39,8 @@ func ParseQuantity(kind Kind, natural bool, text string) (Quantity, error) {
 func parseQuantity(kind Kind, natural bool, text string) (Quantity, *fault) {
 	digits, rest := cutNumber(strings.TrimSpace(text))
 	q := Quantity{Kind: kind, Unit: canonical(rest), Given: true}
-	if digits == "" && kind == Mass && !natural && isParticle(q.Unit) {
-		q.Number = 1
-		return q, nil
+	if digits == "" && kind == Mass && !natural && isName(q.Unit) {
+		return named(q)
 	}
 	var err error
 	if q.Number, err = number(digits, rest); err != nil {
@@ -49,6 +49,16 @@ func parseQuantity(kind Kind, natural bool, text string) (Quantity, *fault) {
 	if msg := q.misfit(natural); msg != "" {
 		return q, &fault{msg: excerpt(text) + " " + msg}
 	}
+	return q, nil
+}
+
+// named is the mass of a particle, whose name q has as its unit.
+func named(q Quantity) (Quantity, *fault) {
+	names := particleNames()
+	if !slices.Contains(names, q.Unit) {
+		return q, &fault{msg: strings.TrimSuffix(excerpt(q.Unit)+" is no particle known here; "+suggestion(q.Unit, names), "; ")}
+	}
+	q.Number = 1
 	return q, nil
 }
 
@@ -212,7 +222,7 @@ func (q Quantity) String() string {
 	switch {
 	case q.Unit == "":
 		return digits
-	case q.Kind == Mass && q.Number == 1 && isParticle(q.Unit):
+	case q.Kind == Mass && q.Number == 1 && slices.Contains(particleNames(), q.Unit):
 		return q.Unit
 	}
 	return digits + " " + q.Unit

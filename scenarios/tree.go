@@ -82,16 +82,10 @@ type keyPart struct {
 
 // excerptKey shows a key in a message: as it is where it is a plain word.
 func excerptKey(name string) string {
-	for i := range len(name) {
-		c := name[i] | 0x20
-		if !('a' <= c && c <= 'z' || isDigit(name[i]) || name[i] == '-' || name[i] == '_') || i >= 40 {
-			return excerpt(name)
-		}
+	if isWord(name) && len(name) <= 40 {
+		return name
 	}
-	if name == "" {
-		return `""`
-	}
-	return name
+	return excerpt(name)
 }
 
 // parseTree reads a TOML document. It alone knows the parser, whose interface
