@@ -52,8 +52,9 @@ func (a *Amplitudes) finite() bool {
 }
 
 // split is the wave at the near face as incident and reflected part, of
-// amplitudes in and out without the wave's common factor, with their
-// logarithmic derivatives with respect to energy. shift is what belongs to
+// amplitudes in and out without the wave's common factor, with the
+// logarithmic derivatives with respect to energy of v in and v out: the speed
+// v in the lead turns no phase and takes away a 1/v^2 that would cancel. shift is what belongs to
 // arg in' and delay to arg out' - arg in' by way of the far lead's speed.
 type split struct {
 	in, out             complex128
@@ -75,12 +76,12 @@ func (s *Solver) divide(l level) split {
 		speedIn: v,
 	}
 	p.inSquare, p.outSquare = square(p.in), square(p.out)
-	// d(1/v)/dE = -1/(m v^3)
-	turn := complex(0, 1/(2*s.near.Mass*v*v*v)) * w.w()
+	// d(v u)/dE with dv/dE = 1/(m v), over v
+	du := w.du + w.u()/complex(s.near.Mass*v*v, 0)
 	iw := complex(0, 1/v) * w.dw
-	p.inLog = ((w.du-iw)/2 + turn) / p.in
+	p.inLog = (du - iw) / 2 / p.in
 	if p.outSquare > 0 {
-		p.outLog = ((w.du+iw)/2 - turn) / p.out
+		p.outLog = (du + iw) / 2 / p.out
 	}
 	if l.far > 0 {
 		p.speedOut = w.speed
@@ -94,19 +95,26 @@ func (s *Solver) divide(l level) split {
 // addThreshold adds what start left out: the derivatives by way of the speed
 // in the far lead, d(speed)/dE = 1/(m speed). The wave is c + i speed s with c
 // and s real, and the phases of in and out both change in proportion to
-// n = Re(in_s conj(in_c)), over |in|^2 and |out|^2; the difference
-// |in|^2 - |out|^2 is the flux over the incident speed, which cancels the
-// speed in the far lead, so that the delay of reflection stays finite at the
-// threshold.
+// n = Re(in_s conj(in_c)) = Re(out_s conj(out_c)), over |in|^2 and |out|^2.
+//
+// Where most is reflected the two nearly cancel; but |in|^2 - |out|^2 is the
+// flux over the incident speed, which takes away the speed in the far lead, so
+// that the delay of reflection stays finite at the threshold. Where little is
+// reflected n is nearly 0 itself, and is formed with out in its place.
 func (s *Solver) addThreshold(p *split) {
 	w := &s.wave
+	v := p.speedIn
 	cu, cw := w.er*w.pu-w.ei*w.qu, w.er*w.pw-w.ei*w.qw
 	su, sw := (w.er*w.qu+w.ei*w.pu)/w.speed, (w.er*w.qw+w.ei*w.pw)/w.speed
-	n := (cu*su + cw*sw/(p.speedIn*p.speedIn)) / 4
+	n := (cu*su + cw*sw/(v*v)) / 4
 	q := s.far.Mass * w.speed
 	p.shift = n / p.inSquare / q
-	if p.outSquare > 0 {
-		p.delay = n / p.inSquare * (w.flux / q) / (p.speedIn * p.outSquare)
+	switch {
+	case p.outSquare > p.inSquare/2:
+		p.delay = n / p.inSquare * (w.flux / q) / (v * p.outSquare)
+	case p.outSquare > 0:
+		out := p.out * complex(w.er, w.ei)
+		p.delay = (su*real(out)+sw/v*imag(out))/(2*q*p.outSquare) - p.shift
 	}
 }
 

@@ -1,0 +1,157 @@
+package stationary
+
+import (
+	"context"
+	"math"
+	"math/cmplx"
+	"slices"
+)
+
+// Pole is a pole of t and r at the energy Energy - i Width/2.
+type Pole struct{ Energy, Width float64 }
+
+// probe is what the search for resonances knows at one energy: the phase of
+// t (of sqrt r where the far lead is closed), through whole turns, and its
+// derivative with respect to the stretch coordinate x.
+type probe struct {
+	x, energy    float64
+	phase, slope float64
+	logSlope     complex128 // d(log in)/dE; in has its zeros at the poles
+}
+
+// probe evaluates the wave at x.
+func (s *Solver) probe(st *stretch, x float64) probe {
+	l := s.levelAt(st, x)
+	s.cross(l, true)
+	p := s.divide(l)
+	k, dk := st.at(x)
+	logSlope := p.inLog + complex(0, p.shift)
+	return probe{
+		x: x, energy: l.energy,
+		phase:    -(s.wave.turn + cmplx.Phase(p.in*cmplx.Conj(s.wave.u()))),
+		slope:    -imag(logSlope) * k * dk / s.near.Mass,
+		logSlope: logSlope,
+	}
+}
+
+// hunt is the search for resonances over one stretch.
+//
+// The amplitude of the incident wave for a given outgoing one, in(E), has a
+// zero at every pole, so that the phase of t = 1/in rises by pi over the
+// width of a resonance, however narrow it is. The phase is known through
+// whole turns and so is its derivative; where the one is not the integral of
+// the other between two energies, something is hidden between them. Intervals
+// are halved until that is so nowhere.
+type hunt struct {
+	solver     *Solver
+	stretch    *stretch
+	probes     []probe
+	unresolved []probe // where two neighbouring numbers still differ by a jump
+	budget     int
+}
+
+// Bounds within which a phase step counts as accounted for: by the trapezoidal
+// rule to mismatch, and short of a half turn, which a hidden pole would add.
+const (
+	mismatch = 0.25
+	longest  = 2.0
+)
+
+// search fills the probes, in order of x.
+func (h *hunt) search(ctx context.Context, pieces int) error {
+	st := h.stretch
+	from := max(st.from, 1e-6*st.to)
+	last := h.solver.probe(st, from)
+	h.probes = append(h.probes, last)
+	for i := 1; i <= pieces; i++ {
+		next := h.solver.probe(st, from+(st.to-from)*float64(i)/float64(pieces))
+		if err := h.between(ctx, last, next); err != nil {
+			return err
+		}
+		last = next
+	}
+	return nil
+}
+
+// between appends the probes after a up to b.
+func (h *hunt) between(ctx context.Context, a, b probe) error {
+	rise := b.phase - a.phase
+	told := (a.slope + b.slope) / 2 * (b.x - a.x)
+	if math.Abs(rise) <= longest && math.Abs(rise-told) <= mismatch {
+		h.probes = append(h.probes, b)
+		return nil
+	}
+	if b.x-a.x <= 1e-15*b.x {
+		h.unresolved = append(h.unresolved, a)
+		h.probes = append(h.probes, b)
+		return nil
+	}
+	if err := ctx.Err(); err != nil {
+		return err
+	}
+	if h.budget--; h.budget < 0 {
+		h.unresolved = append(h.unresolved, a)
+		return ErrEvaluations
+	}
+	mid := h.solver.probe(h.stretch, a.x+(b.x-a.x)/2)
+	if err := h.between(ctx, a, mid); err != nil {
+		return err
+	}
+	return h.between(ctx, mid, b)
+}
+
+// poles refines what the probes point at. A probe near a pole knows it: the
+// zero of in nearest to E is E - 1/(d(log in)/dE) when no other is near.
+func (h *hunt) poles() []Pole {
+	var found []Pole
+	for i, p := range h.probes {
+		guess := complex(p.energy, 0) - 1/p.logSlope
+		lo, hi := p.energy, p.energy
+		lo = min(lo, h.probes[max(i-1, 0)].energy, h.probes[min(i+1, len(h.probes)-1)].energy)
+		hi = max(hi, h.probes[max(i-1, 0)].energy, h.probes[min(i+1, len(h.probes)-1)].energy)
+		if real(guess) < lo || real(guess) > hi || imag(guess) >= 0 {
+			continue
+		}
+		if z, ok := h.solver.refine(guess); ok {
+			found = append(found, Pole{real(z), -2 * imag(z)})
+		}
+	}
+	return found
+}
+
+// refine takes Newton's method to the zero of in near z.
+func (s *Solver) refine(z complex128) (complex128, bool) {
+	const steps = 30
+	start := z
+	for range steps {
+		in, slope, _ := s.Incoming(z)
+		step := in / slope
+		if cmplx.IsNaN(step) || cmplx.IsInf(step) {
+			return z, false
+		}
+		z -= step
+		if cmplx.Abs(step) <= 1e-14*(math.Abs(real(z))+s.high-s.low)+1e-10*math.Abs(imag(z)) {
+			// Stay with the pole that was pointed at.
+			near := cmplx.Abs(z-start) <= 4*math.Abs(imag(start))+1e-9*math.Abs(real(z))
+			return z, near && imag(z) < 0 && real(z) > s.near.Height
+		}
+	}
+	return z, false
+}
+
+// distinct sorts poles by energy and drops those found twice.
+func distinct(poles []Pole) []Pole {
+	slices.SortFunc(poles, func(a, b Pole) int {
+		switch {
+		case a.Energy < b.Energy:
+			return -1
+		case a.Energy > b.Energy:
+			return 1
+		}
+		return 0
+	})
+	return slices.CompactFunc(poles, func(a, b Pole) bool {
+		return math.Abs(a.Energy-b.Energy) <= 1e-6*min(a.Width, b.Width)+1e-13*math.Abs(a.Energy) &&
+			math.Abs(a.Width-b.Width) <= 1e-3*max(a.Width, b.Width)+1e-13*math.Abs(a.Energy)
+	})
+}

@@ -1,0 +1,58 @@
+package stationary
+
+import "math"
+
+// rounding is what rounding may do to a panel's sums. The amplitudes of a node
+// are off by a few roundings, steady, which may be alike at all nodes; and as
+// if the energy were off by one, jitter, which is different at every node, so
+// that its squares add. Next to a narrow resonance the second is by far the
+// larger.
+type rounding struct {
+	steady, jitter       [sums]float64 // jitter squared
+	layerSteady, layerSq float64       // of the layers' sums, relative
+}
+
+// scale is the largest kinetic energy met, above or below a height.
+func (s *Solver) scale(energy float64) float64 { return max(energy-s.low, s.high-energy) }
+
+// add adds the share of one node, g and t its weights times |phi|^2 and
+// |phi|^2 T, scale the energy whose rounding is felt.
+func (r *rounding) add(a *Amplitudes, g, t, scale float64) {
+	const eps = 0x1p-52
+	const few = 4 * eps
+	r.share(a, g, t, few, func(j int, x float64) { r.steady[j] += x })
+	nu := eps * scale * a.sharpness
+	r.share(a, g, t, nu, func(j int, x float64) { r.jitter[j] += x * x })
+	r.layerSteady = 2 * few
+	r.layerSq = max(r.layerSq, 4*nu*nu)
+}
+
+// share passes on what a relative error nu of the amplitudes does to each
+// integrand.
+func (r *rounding) share(a *Amplitudes, g, t, nu float64, to func(int, float64)) {
+	root := nu * (math.Sqrt(a.Reflection) + nu)
+	to(sumOne, 0x1p-52*g)
+	to(sumSlow, 0x1p-52*g/a.SpeedIn)
+	if t > 0 {
+		to(sumT, 2*nu*t)
+		to(sumDelayT, 3*nu*t*a.sharpness)
+		to(sumSlowInT, 2*nu*t/a.SpeedIn)
+		to(sumSlowOutT, 2*nu*t/a.SpeedOut)
+	}
+	to(sumR, 2*root*g)
+	to(sumDelayR, 3*root*g*a.sharpness)
+	to(sumSlowR, 2*root*g/a.SpeedIn)
+	to(sumA, 2*nu*a.Absorption*g)
+	to(sumDwell, 2*nu*a.Dwell*g)
+}
+
+// sigmas is how many standard deviations of the jitter count as its bound.
+const sigmas = 3
+
+// of bounds the rounding of sum j, value the panel's sums.
+func (r *rounding) of(j int, value []float64) float64 {
+	if j < sums {
+		return r.steady[j] + sigmas*math.Sqrt(r.jitter[j])
+	}
+	return value[j] * (r.layerSteady + sigmas*math.Sqrt(r.layerSq))
+}
