@@ -61,7 +61,7 @@ length = 10
 `
 
 const lengths = "in m, mm, um, nm, angstrom, pm"
-const energies = "in eV, meV, ueV, neV, peV, J, K, mK, uK, nK, Hz, kHz, MHz, GHz, THz"
+const energies = "in keV, eV, meV, ueV, neV, peV, J, K, mK, uK, nK, Hz, kHz, MHz, GHz, THz"
 
 // badInput is a sound scenario with one passage replaced, and what the message
 // says then.

@@ -123,7 +123,7 @@ func (f *File) layerRange() string {
 
 // excerptPath shows a path in a message.
 func excerptPath(path string) string {
-	if len(path) > 60 || path != printable(path) {
+	if path == "" || len(path) > 60 || path != printable(path) {
 		return excerpt(path)
 	}
 	return path

@@ -56,7 +56,7 @@ func units(k Kind) []unit {
 func energyUnits() []unit {
 	const kelvin, hertz = boltzmann / electronVolt, planck / electronVolt
 	return []unit{
-		{"eV", 1}, {"meV", 1e-3}, {"ueV", 1e-6}, {"neV", 1e-9}, {"peV", 1e-12}, {"J", 1 / electronVolt},
+		{"keV", 1e3}, {"eV", 1}, {"meV", 1e-3}, {"ueV", 1e-6}, {"neV", 1e-9}, {"peV", 1e-12}, {"J", 1 / electronVolt},
 		{"K", kelvin}, {"mK", kelvin * 1e-3}, {"uK", kelvin * 1e-6}, {"nK", kelvin * 1e-9},
 		{"Hz", hertz}, {"kHz", hertz * 1e3}, {"MHz", hertz * 1e6}, {"GHz", hertz * 1e9}, {"THz", hertz * 1e12},
 	}

@@ -93,7 +93,7 @@ func TestUnitsByPrefix(t *testing.T) {
 		{Length, "1 m", "1e3 mm"}, {Length, "1 mm", "1e3 um"}, {Length, "1 um", "1e3 nm"},
 		{Length, "1 nm", "10 angstrom"}, {Length, "1 angstrom", "100 pm"}, {Length, "1 \u00b5m", "1 um"},
 		{Length, "1 \u03bcm", "1um"}, {Length, "1 \u00c5", "1 angstrom"}, {Length, "1 \u212b", "1 angstrom"},
-		{Energy, "1 eV", "1e3 meV"}, {Energy, "1 meV", "1e3 ueV"}, {Energy, "1 ueV", "1e3 neV"}, {Energy, "1 neV", "1e3 peV"},
+		{Energy, "1 keV", "1e3 eV"}, {Energy, "1 eV", "1e3 meV"}, {Energy, "1 meV", "1e3 ueV"}, {Energy, "1 ueV", "1e3 neV"}, {Energy, "1 neV", "1e3 peV"},
 		{Energy, "1 K", "1e3 mK"}, {Energy, "1 mK", "1e3 uK"}, {Energy, "1 uK", "1e3 nK"},
 		{Energy, "1 THz", "1e3 GHz"}, {Energy, "1 GHz", "1e3 MHz"}, {Energy, "1 MHz", "1e3 kHz"}, {Energy, "1 kHz", "1e3 Hz"},
 		{Time, "1 s", "1e3 ms"}, {Time, "1 ms", "1e3 us"}, {Time, "1 us", "1e3 ns"}, {Time, "1 ns", "1e3 ps"},
