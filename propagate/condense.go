@@ -4,56 +4,80 @@ package propagate
 // that joins its two faces.
 type condensed struct{ ll, lr, rr complex128 }
 
-// shift returns the factors a, b with which the cell's matrix for
-// alpha H - beta is a*stiff + b*mass.
-func (c *cell) shift(alpha, beta complex128) (a, b complex128) {
-	return alpha * c.kappa, c.mu * (alpha*c.u - beta)
-}
-
-// condense eliminates the interior of alpha H - beta.
+// condense eliminates the interior of alpha H - beta:
+//
+//	A_ff - A_fi inv(A_ii) A_if.
 func (c *cell) condense(alpha, beta complex128) condensed {
 	a, b := c.shift(alpha, beta)
-	p := c.order
-	out := condensed{
-		ll: a*complex(c.stiff[0][0], 0) + b*complex(c.mass[0], 0),
-		lr: a * complex(c.stiff[0][p], 0),
-		rr: a*complex(c.stiff[p][p], 0) + b*complex(c.mass[p], 0),
-	}
+	out := c.bare(a, b)
 	for j, lambda := range c.lambda {
-		f := a * a / (a*complex(lambda, 0) + b)
-		l, r := c.couple[0][j], c.couple[1][j]
-		out.ll -= f * complex(l*l, 0)
-		out.lr -= f * complex(l*r, 0)
-		out.rr -= f * complex(r*r, 0)
+		f := -a * a * resolvent(a, lambda, b)
+		out.add(f, c.couple[0][j], c.couple[1][j])
 	}
 	return out
 }
 
-// weigh returns two quadratic forms of the element over its face values, for
-// H - energy: bilinear, with which -psi^T W psi is the derivative of the
-// condensed matrix with respect to energy, and hermitian, with which
-// psi^H W psi is the integral of |psi|^2 over the element (real axis only).
-func (c *cell) weigh(energy complex128) (bilinear condensed, hermitian condensed) {
-	a, b := c.shift(1, energy)
+// bare is the faces' own part of a*stiff + b*mass.
+func (c *cell) bare(a, b complex128) condensed {
 	p := c.order
-	bilinear = condensed{ll: complex(c.mass[0], 0), rr: complex(c.mass[p], 0)}
-	hermitian = bilinear
-	for j, lambda := range c.lambda {
-		g := a / (a*complex(lambda, 0) + b)
-		square, norm := g*g, complex(real(g)*real(g)+imag(g)*imag(g), 0)
-		l, r := c.couple[0][j], c.couple[1][j]
-		for _, t := range []struct {
-			to *condensed
-			f  complex128
-		}{{&bilinear, square}, {&hermitian, norm}} {
-			t.to.ll += t.f * complex(l*l, 0)
-			t.to.lr += t.f * complex(l*r, 0)
-			t.to.rr += t.f * complex(r*r, 0)
-		}
+	return condensed{
+		ll: a*complex(c.stiff[0][0], 0) + b*complex(c.mass[0], 0),
+		lr: a * complex(c.stiff[0][p], 0),
+		rr: a*complex(c.stiff[p][p], 0) + b*complex(c.mass[p], 0),
 	}
-	bilinear.scale(c.mu)
-	hermitian.scale(c.mu)
-	return bilinear, hermitian
+}
+
+// view is a cell as the scattering at one energy sees it: the condensed matrix
+// of H - energy and two quadratic forms over the face values. With bilinear,
+// -psi^T W psi is the derivative of the condensed matrix with respect to the
+// energy; with hermitian, psi^H W psi is the integral of |psi|^2 over the
+// element (real axis only).
+type view struct{ matrix, bilinear, hermitian condensed }
+
+// view condenses the cell at an energy.
+func (c *cell) view(energy complex128) view {
+	a, b := c.shift(1, energy)
+	faces := condensed{ll: complex(c.mass[0], 0), rr: complex(c.mass[c.order], 0)}
+	v := view{matrix: c.bare(a, b), bilinear: faces, hermitian: faces}
+	for j, lambda := range c.lambda {
+		g := a * resolvent(a, lambda, b)
+		l, r := c.couple[0][j], c.couple[1][j]
+		v.matrix.add(-a*g, l, r)
+		v.bilinear.add(g*g, l, r)
+		v.hermitian.add(complex(square(g), 0), l, r)
+	}
+	v.bilinear.scale(c.mu)
+	v.hermitian.scale(c.mu)
+	return v
+}
+
+// nearPole is how close a real energy may come to an eigenvalue of an
+// element's interior, as a part of it. Nearer, where the condensed matrix
+// would lose its digits, it is moved to this distance: at the square root of
+// the rounding unit the shift costs no more than the rounding it avoids.
+const nearPole = 1.5e-8
+
+// resolvent is 1/(a lambda + b), kept away from a pole on the real axis.
+func resolvent(a complex128, lambda float64, b complex128) complex128 {
+	d := complex(real(a)*lambda, imag(a)*lambda) + b
+	if least := nearPole * nearPole * square(b); square(d) < least {
+		d += complex(nearPole, 0) * b
+	}
+	return reciprocal(d)
+}
+
+// reciprocal is 1/d for values whose squares neither overflow nor vanish.
+func reciprocal(d complex128) complex128 {
+	s := 1 / square(d)
+	return complex(real(d)*s, -imag(d)*s)
+}
+
+// add adds f (l, r)(l, r)^T.
+func (c *condensed) add(f complex128, l, r float64) {
+	re, im := real(f), imag(f)
+	c.ll += complex(re*(l*l), im*(l*l))
+	c.lr += complex(re*(l*r), im*(l*r))
+	c.rr += complex(re*(r*r), im*(r*r))
 }
 
 func (c *condensed) scale(f complex128) {
@@ -61,3 +85,6 @@ func (c *condensed) scale(f complex128) {
 	c.lr *= f
 	c.rr *= f
 }
+
+// turned is the element seen from the other side.
+func (c condensed) turned() condensed { return condensed{ll: c.rr, lr: c.lr, rr: c.ll} }

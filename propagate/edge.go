@@ -1,7 +1,6 @@
 package propagate
 
 import (
-	"math"
 	"math/cmplx"
 
 	"fluxtoll/potential"
@@ -11,6 +10,25 @@ import (
 // elements absorb, small enough that the rotated wave stays well resolved.
 const EdgeAngle = 0.55
 
+// Edge is a row of Count elements behind a plane, rotated into the complex
+// plane by Angle (exterior complex scaling: B. Simon, Phys. Lett. A 71, 211
+// (1979)). The first has length First, each next is Growth times longer.
+type Edge struct {
+	Count                int
+	First, Growth, Angle float64
+}
+
+// lengths lists the element lengths from the plane outwards.
+func (e Edge) lengths() []float64 {
+	out := make([]float64, e.Count)
+	h := e.First
+	for i := range out {
+		out[i] = h
+		h *= e.Growth
+	}
+	return out
+}
+
 // Reflection is the amplitude with which an edge of elements of the given
 // order, standing on its own behind a plane in a lead, sends back a wave of
 // the given energy (> lead.Height). It is solved on the edge's own elements.
@@ -18,58 +36,34 @@ func (e Edge) Reflection(lead potential.Lead, order int, energy float64) complex
 	return e.reflection(uniformPencil(newRule(order)), lead, energy)
 }
 
-func (e Edge) reflection(p *pencil, lead potential.Lead, energy float64) complex128 {
+func (e Edge) reflection(uniform *pencil, lead potential.Lead, energy float64) complex128 {
 	turn := cmplx.Exp(complex(0, e.Angle))
-	lengths := e.lengths()
-	a := admittance{}
-	for i := len(lengths) - 1; i >= 0; i-- {
-		h := complex(lengths[i], 0) * turn
-		c := cell{pencil: p, kappa: 1 / (complex(lead.Mass, 0) * h), mu: h, u: complex(lead.Height, 0)}
-		f := c.condense(1, complex(energy, 0))
-		if i == len(lengths)-1 {
-			a.value = f.ll
-			continue
-		}
-		a.value = f.ll - f.lr*f.lr/(f.rr+a.value)
+	var r edgeRow
+	for _, h := range e.lengths() {
+		c := flatCell(uniform, complex(h, 0)*turn, lead.Height, lead.Mass, 0)
+		r.append(c.condense(1, complex(energy, 0)))
 	}
-	return leadWave(lead, energy).reflect(a)
+	return waveIn(lead, energy).reflect(r.all.ll)
 }
 
-// EdgeGoal is one energy at which an edge has to absorb, and the share of the
-// packet that meets the edge there.
-type EdgeGoal struct{ Energy, Weight float64 }
+// edgeRow is a row of elements, seen from the plane, with all faces between
+// its ends eliminated. all.ll is its admittance with the wall psi = 0 behind it.
+type edgeRow struct {
+	all   condensed
+	count int
+}
 
-// ChooseEdge returns the shortest edge for which the weighted sum of
-// |reflection amplitude| over the goals is at most limit, or, where none of
-// those tried is good enough, the one with the least.
-func ChooseEdge(lead potential.Lead, order int, goals []EdgeGoal, limit float64) Edge {
-	p := uniformPencil(newRule(order))
-	shortest := math.Inf(1)
-	for _, g := range goals {
-		shortest = min(shortest, 1/math.Sqrt(2*lead.Mass*math.Max(g.Energy-lead.Height, 0)))
+// append adds the next element outwards.
+func (r *edgeRow) append(c condensed) {
+	r.count++
+	if r.count == 1 {
+		r.all = c
+		return
 	}
-	best, least := Edge{}, math.Inf(1)
-	if math.IsInf(shortest, 1) {
-		shortest = 1 / math.Sqrt(lead.Mass*math.SmallestNonzeroFloat32)
+	g := reciprocal(r.all.rr + c.ll)
+	r.all = condensed{
+		ll: r.all.ll - r.all.lr*r.all.lr*g,
+		lr: -r.all.lr * c.lr * g,
+		rr: c.rr - c.lr*c.lr*g,
 	}
-	for count := 4; count <= 24; count++ {
-		for _, first := range []float64{2, 3, 4.5, 6} {
-			for _, growth := range []float64{1.3, 1.5, 1.7} {
-				e := Edge{Count: count, First: first * shortest, Growth: growth, Angle: EdgeAngle}
-				sum := 0.0
-				for _, g := range goals {
-					if g.Energy > lead.Height {
-						sum += g.Weight * cmplx.Abs(e.reflection(p, lead, g.Energy))
-					}
-				}
-				if sum < least {
-					best, least = e, sum
-				}
-			}
-		}
-		if least <= limit {
-			return best
-		}
-	}
-	return best
 }

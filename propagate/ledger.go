@@ -49,8 +49,8 @@ type Ledger struct {
 	start       float64   // probability between the planes at t = 0
 }
 
-func newLedger(m *Mesh, psi []complex128) Ledger {
-	n := len(m.structure.Layers)
+func newLedger(m *Mesh, psi wave) Ledger {
+	n := len(m.layerSpan)
 	l := Ledger{
 		Lost: make([]float64, n), Dwell: make([]float64, n), InLayer: make([]float64, n),
 		start: m.norm(m.left, m.right, psi),

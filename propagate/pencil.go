@@ -1,21 +1,17 @@
 package propagate
 
-import (
-	"math"
-
-	"gonum.org/v1/gonum/mat"
-)
-
 // pencil is the pair of real matrices (stiffness with potential, mass) of one
 // element and the eigenmodes of its interior. Everything an element is asked
-// for - its condensed form for any complex shift, its inverse for a time
-// step - follows from the modes without another factorisation.
+// for - its condensed form for any complex shift, a factor of a time step -
+// follows from the modes without another factorisation.
 //
 // With f the two faces and i the interior nodes, A = a*stiff + b*mass gives
 //
 //	inv(A_ii) = sum over j of v_j v_j^T / (a lambda_j + b),
 //
-// where stiff_ii v_j = lambda_j mass_ii v_j and v_j^T mass_ii v_j = 1.
+// where stiff_ii v_j = lambda_j mass_ii v_j and v_j^T mass_ii v_j = 1. A wave
+// function on the interior is kept by its amplitudes c_j = v_j^T mass_ii psi_i,
+// in which A_ii is diagonal and sum |c_j|^2 is the interior's part of the norm.
 type pencil struct {
 	*rule
 	mass   []float64    // diagonal, order+1
@@ -23,36 +19,21 @@ type pencil struct {
 	lambda []float64    // order-1 interior eigenvalues
 	modes  [][]float64  // modes[j][i]: mode j at interior node i
 	couple [2][]float64 // couple[f][j] = stiff_fi v_j, f = 0 left, 1 right
+
+	// mirror says that the element is its own mirror image. Its modes 0 to
+	// even-1 are then even and the others odd, exactly: couple[1][j] is
+	// couple[0][j] for the former and -couple[0][j] for the latter.
+	mirror bool
+	even   int
 }
 
-// newPencil makes the matrices of an element of length h for height u and
-// mass m given at the nodes of the rule:
+// newPencil makes the matrices of an element of length h for heights u and
+// masses m (length order+1) given at the nodes of the rule:
 //
 //	stiff_ij = (1/2) sum_q w_q D_qi D_qj / (m_q h) + h w_i u_i delta_ij,
 //	mass_i   = h w_i.
 func newPencil(r *rule, h float64, u, m []float64) *pencil {
-	n := r.order + 1
-	p := &pencil{rule: r, mass: make([]float64, n), stiff: make([][]float64, n)}
-	for i := range p.stiff {
-		p.stiff[i] = make([]float64, n)
-		p.mass[i] = h * r.weights[i]
-	}
-	for i := range n {
-		sum := 0.0
-		for j := range n {
-			if j == i {
-				continue
-			}
-			v := 0.0
-			for q := range n {
-				v += r.weights[q] * r.diff[q][i] * r.diff[q][j] / m[q]
-			}
-			p.stiff[i][j] = v / (2 * h)
-			sum += p.stiff[i][j]
-		}
-		// A constant has no kinetic energy: the diagonal closes the row.
-		p.stiff[i][i] = p.mass[i]*u[i] - sum
-	}
+	p := assemblePencil(r, h, u, m)
 	p.diagonalise()
 	return p
 }
@@ -63,40 +44,35 @@ func uniformPencil(r *rule) *pencil {
 	for i := range one {
 		one[i] = 1
 	}
-	return newPencil(r, 1, zero, one)
+	p := assemblePencil(r, 1, zero, one)
+	p.mirror = true
+	p.diagonalise()
+	return p
 }
 
-// diagonalise finds the interior modes by the symmetric eigenproblem of
-// mass^(-1/2) stiff mass^(-1/2).
-func (p *pencil) diagonalise() {
-	n := p.order - 1
-	if n == 0 {
-		return
+func assemblePencil(r *rule, h float64, u, m []float64) *pencil {
+	n := r.order + 1
+	p := &pencil{rule: r, mass: make([]float64, n), stiff: make([][]float64, n)}
+	for i := range p.stiff {
+		p.stiff[i] = make([]float64, n)
+		p.mass[i] = h * r.weights[i]
 	}
-	sym := mat.NewSymDense(n, nil)
+	weight := make([]float64, n)
+	for q := range weight {
+		weight[q] = r.weights[q] / (2 * h * m[q])
+	}
 	for i := range n {
-		for j := i; j < n; j++ {
-			sym.SetSym(i, j, p.stiff[i+1][j+1]/math.Sqrt(p.mass[i+1]*p.mass[j+1]))
+		for j := range i {
+			v := 0.0
+			for q, w := range weight {
+				v += w * r.diff[q][i] * r.diff[q][j]
+			}
+			p.stiff[i][j], p.stiff[j][i] = v, v
 		}
 	}
-	var eig mat.EigenSym
-	if !eig.Factorize(sym, true) {
-		panic("propagate: eigenmodes of an element did not converge")
+	// A constant has no kinetic energy: the diagonal closes the row.
+	for i, row := range p.stiff {
+		row[i] = p.mass[i]*u[i] - sum(row)
 	}
-	var vectors mat.Dense
-	eig.VectorsTo(&vectors)
-	p.lambda = eig.Values(nil)
-	p.modes = make([][]float64, n)
-	for f := range p.couple {
-		p.couple[f] = make([]float64, n)
-	}
-	for j := range n {
-		p.modes[j] = make([]float64, n)
-		for i := range n {
-			v := vectors.At(i, j) / math.Sqrt(p.mass[i+1])
-			p.modes[j][i] = v
-			p.couple[0][j] += p.stiff[0][i+1] * v
-			p.couple[1][j] += p.stiff[p.order][i+1] * v
-		}
-	}
+	return p
 }

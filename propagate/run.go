@@ -5,41 +5,14 @@ import (
 	"math"
 )
 
-// Status says why a run ended.
-type Status int
-
-// The ends of a run.
-const (
-	Running Status = iota
-	Settled
-	StepLimit
-	TimeLimit
-	Interrupted
-)
-
-func (s Status) String() string {
-	switch s {
-	case Running:
-		return "running"
-	case Settled:
-		return "settled"
-	case StepLimit:
-		return "step limit"
-	case TimeLimit:
-		return "time limit"
-	case Interrupted:
-		return "interrupted"
-	}
-	return "unknown"
-}
-
 // Ending decides when a run is over.
 type Ending struct {
-	Steps int     // at most this many steps
-	Time  float64 // and at most this long
+	Steps int     // at most this many steps, but always one
+	Time  float64 // and no step after this time
 	// Settled is asked now and then: is what remains between the planes
 	// negligible? remaining is that probability, lifetime the time in which
-	// it now falls by a factor e (+Inf where it does not fall).
+	// it now falls by a factor e (+Inf where it does not fall). A nil
+	// Settled is never content.
 	Settled func(l *Ledger, remaining, lifetime float64) bool
 	// Watch, if not nil, is called after every step.
 	Watch func(l *Ledger)
@@ -48,35 +21,63 @@ type Ending struct {
 // checkEvery is how many steps lie between two looks at what remains.
 const checkEvery = 4
 
-// Run is a stepper on its way to the end.
+// look is what the last look at the probability between the planes found.
+type look struct {
+	Remaining float64 // that probability
+	Lifetime  float64 // time in which it fell by a factor e; +Inf where it did not fall
+	time      float64
+}
+
+// firstLook is the look before any was taken.
+func firstLook() look { return look{Remaining: 1, Lifetime: math.Inf(1)} }
+
+// next is the look that finds remaining at a time after the last one. At the
+// same time nothing can be said about the fall, and the last look stands.
+func (l look) next(remaining, time float64) look {
+	if time == l.time {
+		return l
+	}
+	n := look{Remaining: remaining, Lifetime: math.Inf(1), time: time}
+	if remaining < l.Remaining {
+		n.Lifetime = (time - l.time) / math.Log(l.Remaining/remaining)
+	}
+	return n
+}
+
+// Run is a stepper on its way to the end. Remaining and Lifetime are what the
+// last look found.
 type Run struct {
 	*Stepper
-	ending    Ending
-	before    float64 // what remained at the last look
-	Remaining float64
-	Lifetime  float64
+	look
+	ending Ending
 }
 
 // NewRun sets a stepper on its way.
 func NewRun(s *Stepper, e Ending) *Run {
-	return &Run{Stepper: s, ending: e, before: 1, Remaining: 1, Lifetime: math.Inf(1)}
+	return &Run{Stepper: s, ending: e, look: firstLook()}
 }
 
-// Next takes one step and says whether the run is over.
+// Next takes one step and says whether the run is over. A run that is settled
+// when it meets a limit counts as settled.
 func (r *Run) Next() Status {
 	r.Advance()
 	l := r.Ledger()
 	if r.ending.Watch != nil {
 		r.ending.Watch(l)
 	}
-	over := l.Steps >= r.ending.Steps || l.Time >= r.ending.Time
-	if l.Steps%checkEvery == 0 || over {
-		r.look()
-		if r.ending.Settled(l, r.Remaining, r.Lifetime) {
+	limit := r.limit()
+	if l.Steps%checkEvery == 0 || limit != Running {
+		r.inspect()
+		if r.ending.Settled != nil && r.ending.Settled(l, r.Remaining, r.Lifetime) {
 			return Settled
 		}
 	}
-	switch {
+	return limit
+}
+
+// limit is the limit that the run has reached, or Running.
+func (r *Run) limit() Status {
+	switch l := r.Ledger(); {
 	case l.Steps >= r.ending.Steps:
 		return StepLimit
 	case l.Time >= r.ending.Time:
@@ -85,25 +86,33 @@ func (r *Run) Next() Status {
 	return Running
 }
 
-// look measures what remains and how fast it falls.
-func (r *Run) look() {
-	r.Remaining = r.Inside()
-	r.Lifetime = math.Inf(1)
-	if r.Remaining < r.before {
-		r.Lifetime = checkEvery * r.Step / math.Log(r.before/r.Remaining)
-	}
-	r.before = r.Remaining
-}
+// inspect looks at what remains and how fast it falls.
+func (r *Run) inspect() { r.look = r.next(r.Inside(), r.Ledger().Time) }
 
 // Finish steps until the run is over or the context is done.
 func (r *Run) Finish(ctx context.Context) Status {
 	for {
 		if ctx.Err() != nil {
-			r.look()
+			r.inspect()
 			return Interrupted
 		}
 		if status := r.Next(); status != Running {
 			return status
 		}
 	}
+}
+
+// Save copies the present moment of the run.
+func (r *Run) Save() State {
+	s := r.Stepper.Save()
+	s.look = r.look
+	return s
+}
+
+// Restore goes back (or on) to a moment saved by Save of this run. What
+// follows, the step at which the run ends included, is bit for bit what
+// followed then.
+func (r *Run) Restore(at State) {
+	r.Stepper.Restore(at)
+	r.look = at.look
 }

@@ -1,0 +1,132 @@
+package propagate
+
+import (
+	"math"
+
+	"gonum.org/v1/gonum/mat"
+)
+
+// diagonalise finds the interior modes by the symmetric eigenproblem of
+// mass^(-1/2) stiff mass^(-1/2); a mirror-symmetric element falls into an even
+// and an odd part, each of half the size.
+func (p *pencil) diagonalise() {
+	n := p.order - 1
+	for f := range p.couple {
+		p.couple[f] = make([]float64, 0, n)
+	}
+	if p.mirror {
+		p.addModes(folding(n, 1))
+		p.even = len(p.modes)
+		p.addModes(folding(n, -1))
+		return
+	}
+	whole := make([][]float64, n)
+	for i := range whole {
+		whole[i] = make([]float64, n)
+		whole[i][i] = 1
+	}
+	p.addModes(whole)
+}
+
+// folding lists an orthonormal basis of the vectors of length n that are even
+// (parity 1) or odd (parity -1) under reversal.
+func folding(n int, parity float64) [][]float64 {
+	var basis [][]float64
+	for i := range n / 2 {
+		v := make([]float64, n)
+		v[i], v[n-1-i] = math.Sqrt2/2, parity*math.Sqrt2/2
+		basis = append(basis, v)
+	}
+	if n%2 == 1 && parity > 0 {
+		v := make([]float64, n)
+		v[n/2] = 1
+		basis = append(basis, v)
+	}
+	return basis
+}
+
+// addModes appends the modes within the span of an orthonormal basis that the
+// eigenproblem does not leave.
+func (p *pencil) addModes(basis [][]float64) {
+	n := len(basis)
+	if n == 0 {
+		return
+	}
+	sym := mat.NewSymDense(n, nil)
+	for i := range n {
+		for j := i; j < n; j++ {
+			sym.SetSym(i, j, p.between(basis[i], basis[j]))
+		}
+	}
+	var eig mat.EigenSym
+	if !eig.Factorize(sym, true) {
+		panic("propagate: eigenmodes of an element did not converge")
+	}
+	var vectors mat.Dense
+	eig.VectorsTo(&vectors)
+	p.lambda = append(p.lambda, eig.Values(nil)...)
+	for j := range n {
+		v := make([]float64, p.order-1)
+		for b, base := range basis {
+			for i, x := range base {
+				v[i] += vectors.At(b, j) * x / math.Sqrt(p.mass[i+1])
+			}
+		}
+		p.addMode(v)
+	}
+}
+
+// between is a^T mass^(-1/2) stiff mass^(-1/2) b over the interior.
+func (p *pencil) between(a, b []float64) float64 {
+	total := 0.0
+	for i, x := range a {
+		if x == 0 {
+			continue
+		}
+		row := 0.0
+		for j, y := range b {
+			row += p.stiff[i+1][j+1] / math.Sqrt(p.mass[i+1]*p.mass[j+1]) * y
+		}
+		total += x * row
+	}
+	return total
+}
+
+// addMode appends a mode and its coupling to the faces.
+func (p *pencil) addMode(v []float64) {
+	left, right := 0.0, 0.0
+	for i, x := range v {
+		left += p.stiff[0][i+1] * x
+		right += p.stiff[p.order][i+1] * x
+	}
+	if p.mirror {
+		right = math.Copysign(left, right)
+	}
+	p.modes = append(p.modes, v)
+	p.couple[0] = append(p.couple[0], left)
+	p.couple[1] = append(p.couple[1], right)
+}
+
+// amplitudes writes c_j = v_j^T mass_ii psi_i for the interior values psi.
+func (p *pencil) amplitudes(psi, c []complex128) {
+	for j, v := range p.modes {
+		re, im := 0.0, 0.0
+		for i, x := range psi {
+			w := v[i] * p.mass[i+1]
+			re += w * real(x)
+			im += w * imag(x)
+		}
+		c[j] = complex(re, im)
+	}
+}
+
+// values writes psi_i = sum over j of v_j c_j for the amplitudes c.
+func (p *pencil) values(c, psi []complex128) {
+	clear(psi)
+	for j, v := range p.modes {
+		re, im := real(c[j]), imag(c[j])
+		for i, x := range v {
+			psi[i] += complex(x*re, x*im)
+		}
+	}
+}
