@@ -2,6 +2,7 @@ package scenarios
 
 import (
 	"math"
+	"strings"
 
 	"fluxtoll/potential"
 )
@@ -19,7 +20,7 @@ func (c *compiler) layer(i int) (potential.Layer, error) {
 		}
 		l.Mass.Number = mass
 	}
-	shape, err := c.shape(&l, layerPath(i)+".file")
+	shape, err := c.shape(&l, i)
 	return potential.Layer{Thickness: c.thickness(&l), Shape: shape, Mass: l.Mass.Number, Loss: l.Loss.Number}, err
 }
 
@@ -36,7 +37,7 @@ func (c *compiler) convert(s section) error {
 }
 
 // shape makes the shape of a layer in internal units.
-func (c *compiler) shape(l *LayerSpec, key string) (potential.Shape, error) {
+func (c *compiler) shape(l *LayerSpec, i int) (potential.Shape, error) {
 	h := l.Height.Number
 	switch l.Shape {
 	case ShapeFlat:
@@ -53,9 +54,9 @@ func (c *compiler) shape(l *LayerSpec, key string) (potential.Shape, error) {
 		from, to := c.rise(l)
 		return potential.Rise{Height: from, HeightEnd: to, Width: l.Width.Number}, nil
 	case ShapeTable:
-		return c.table(l, key)
+		return c.table(l, layerPath(i)+".file")
 	}
-	return nil, &fault{at: l.at, key: key, msg: "has the unknown shape " + excerpt(string(l.Shape))}
+	return nil, &fault{at: l.at, key: layerPath(i) + ".shape", msg: excerpt(string(l.Shape)) + " is not known here", accepted: "accepted are " + strings.Join(shapes(), ", ")}
 }
 
 // rise returns the two heights of a smooth step: by default the entry's and

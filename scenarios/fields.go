@@ -89,6 +89,9 @@ func (l *LayerSpec) fields() []field {
 		height.need, heightEnd.need = false, false
 		return []field{height, heightEnd, width, window, mass, loss}
 	case ShapeTable:
+		if l.Table != nil && l.Table.Mass.Values != nil {
+			return []field{loss}
+		}
 		return []field{mass, loss}
 	}
 	return nil

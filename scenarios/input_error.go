@@ -9,8 +9,8 @@ import (
 )
 
 // InputError says what is wrong with a scenario, where, and what is accepted
-// instead. Line and Column count from 1, columns in characters; a Line of 0
-// means that no place is known. Its text is one line and holds nothing that a
+// instead. Line and Column count from 1, columns in characters (in bytes where
+// File is a table); a Line of 0 means that no place is known. Its text is one line and holds nothing that a
 // terminal would obey.
 type InputError struct {
 	File         string

@@ -2,7 +2,6 @@ package scenarios
 
 import (
 	"errors"
-	"fmt"
 	"io"
 	"path/filepath"
 	"slices"
@@ -69,88 +68,6 @@ func (r *reader) document(text []byte) error {
 	return r.file.complete()
 }
 
-// topKeys are the keys outside any table.
-func topKeys() []string {
-	return []string{"title", "tolerance", "units", "particle", "entry", "layer", "exit", "bias", "packet", "planes", "display"}
-}
-
-// checkKeys refuses what no section has, before anything else: a misspelt key
-// would otherwise be reported as a missing one.
-func (r *reader) checkKeys(root *node) error {
-	if err := known("", root, topKeys()); err != nil {
-		return err
-	}
-	for _, s := range r.file.singles() {
-		if err := knownTable(root, s.path, append(fieldKeys(s.fields), extraWords(s.path)...)); err != nil {
-			return err
-		}
-	}
-	if err := knownTable(root, "display", displayKeys()); err != nil {
-		return err
-	}
-	return checkLayers(root.find("layer"))
-}
-
-// extraWords lists the keys of a section that are no quantities.
-func extraWords(path string) []string {
-	if path == "packet" {
-		return []string{"from"}
-	}
-	return nil
-}
-
-// checkLayers refuses what is no array of tables with layer keys.
-func checkLayers(m *member) error {
-	if m == nil {
-		return nil
-	}
-	if m.value.kind != arrayNode {
-		return &fault{at: m.at, key: "layer", msg: "is " + m.value.kind.String(), accepted: "write each layer as [[layer]], from left to right"}
-	}
-	if n := len(m.value.items); n > mostLayers {
-		return &fault{at: m.value.items[mostLayers].at, key: "layer", msg: fmt.Sprintf("there are %d of them", n), accepted: fmt.Sprintf("up to %d layers are accepted; a [[layer]] of shape \"table\" may replace many", mostLayers)}
-	}
-	keys := layerKeys()
-	for i, item := range m.value.items {
-		if item.kind != tableNode {
-			return &fault{at: item.at, key: layerPath(i), msg: "is " + item.kind.String(), accepted: "write each layer as [[layer]], from left to right"}
-		}
-		if err := known(layerPath(i), item, keys); err != nil {
-			return err
-		}
-	}
-	return nil
-}
-
-// knownTable checks the keys of one table of the document, if it is there.
-func knownTable(root *node, name string, keys []string) error {
-	m := root.find(name)
-	if m == nil {
-		return nil
-	}
-	if m.value.kind != tableNode {
-		return &fault{at: m.at, key: name, msg: "is " + m.value.kind.String(), accepted: "write it as the table [" + name + "] with " + strings.Join(keys, ", ")}
-	}
-	return known(name, m.value, keys)
-}
-
-// known refuses keys that are not listed.
-func known(path string, table *node, keys []string) error {
-	for _, m := range table.keys {
-		if !slices.Contains(keys, m.name) {
-			return unknownKey(path, m, keys)
-		}
-	}
-	return nil
-}
-
-func unknownKey(path string, m member, keys []string) error {
-	return &fault{
-		at: m.at, key: section{path: path}.key(excerptKey(m.name)), msg: "is no key known here",
-		accepted: suggestion(m.name, keys) + "accepted are " + strings.Join(keys, ", "),
-	}
-}
-
 // top reads title, tolerance and units.
 func (r *reader) top(root *node) error {
 	if m := root.find("units"); m != nil {
@@ -177,9 +94,11 @@ func (r *reader) top(root *node) error {
 
 const toleranceAccepted = "a plain number from 1e-13 to 1e-2 is accepted"
 
+func tolerable(tolerance float64) bool { return tolerance >= 1e-13 && tolerance <= 1e-2 }
+
 func (f *File) setTolerance(text string, at place) error {
 	q, bad := parseQuantity(Plain, true, text)
-	if bad == nil && !(q.Number >= 1e-13 && q.Number <= 1e-2) {
+	if bad == nil && !tolerable(q.Number) {
 		bad = &fault{msg: excerpt(text) + " is out of range"}
 	}
 	if bad != nil {
@@ -259,47 +178,4 @@ func (r *reader) from(root *node) error {
 		r.file.Packet.From = FromRight
 	}
 	return err
-}
-
-// complete refuses a file that lacks what it needs.
-func (f *File) complete() error {
-	for _, s := range f.singles() {
-		if err := f.needs(s); err != nil {
-			return err
-		}
-	}
-	for i := range f.Layers {
-		if err := f.needs(f.layer(i)); err != nil {
-			return err
-		}
-	}
-	return f.one()
-}
-
-// needs refuses a section that lacks a key.
-func (f *File) needs(s section) error {
-	for _, fd := range s.fields {
-		if !fd.need || fd.q.Given {
-			continue
-		}
-		at := *s.at
-		if at == 0 {
-			at = f.end()
-		}
-		return &fault{at: at, key: s.key(fd.key), msg: "is missing", accepted: accepts(fd.kind, f.Natural, fd.rule)}
-	}
-	return nil
-}
-
-// one refuses both and neither of length and spread.
-func (f *File) one() error {
-	const accepted = "give one of them: length is the standard deviation in x, spread the one in energy"
-	p := &f.Packet
-	switch {
-	case p.Length.Given && p.Spread.Given:
-		return &fault{at: max(p.Length.at, p.Spread.at), key: "packet", msg: "length and spread are both given", accepted: accepted}
-	case !p.Length.Given && !p.Spread.Given:
-		return &fault{at: p.at, key: "packet.length", msg: "neither length nor spread is given", accepted: accepted}
-	}
-	return nil
 }
