@@ -126,6 +126,10 @@ func (q *quadrature) run(ctx context.Context) error {
 func (q *quadrature) survey(ctx context.Context) error {
 	s := q.solver
 	q.stretches = s.stretches(q.window.lo, q.window.hi)
+	widest := func(energy float64) float64 {
+		const widths = 2
+		return widths * q.spectrum.Width * math.Sqrt(2*(energy-s.near.Height)/s.near.Mass)
+	}
 	var limit error
 	for _, st := range q.stretches {
 		h := hunt{solver: s, stretch: st, budget: max(0, q.options.MaxEvaluations/2-q.used)}
@@ -137,7 +141,7 @@ func (q *quadrature) survey(ctx context.Context) error {
 				return err
 			}
 		}
-		q.poles = append(q.poles, h.poles()...)
+		q.poles = append(q.poles, h.poles(widest)...)
 		q.unresolved = append(q.unresolved, h.unresolved...)
 	}
 	q.poles = distinct(q.poles)

@@ -100,16 +100,19 @@ func (h *hunt) between(ctx context.Context, a, b probe) error {
 	return h.between(ctx, mid, b)
 }
 
-// poles refines what the probes point at. A probe near a pole knows it: the
-// zero of in nearest to E is E - 1/(d(log in)/dE) when no other is near.
-func (h *hunt) poles() []Pole {
+// poles refines what the probes point at, as far as it is narrower than widest
+// at its energy. A probe near a pole knows it: the zero of in nearest to E is
+// E - 1/(d(log in)/dE) when no other is near.
+func (h *hunt) poles(widest func(energy float64) float64) []Pole {
 	var found []Pole
 	for i, p := range h.probes {
 		guess := complex(p.energy, 0) - 1/p.logSlope
-		lo, hi := p.energy, p.energy
-		lo = min(lo, h.probes[max(i-1, 0)].energy, h.probes[min(i+1, len(h.probes)-1)].energy)
-		hi = max(hi, h.probes[max(i-1, 0)].energy, h.probes[min(i+1, len(h.probes)-1)].energy)
-		if real(guess) < lo || real(guess) > hi || imag(guess) >= 0 {
+		a, b := h.probes[max(i-1, 0)].energy, h.probes[min(i+1, len(h.probes)-1)].energy
+		between := real(guess) >= min(a, b) && real(guess) <= max(a, b)
+		if !between || imag(guess) >= 0 || -2*imag(guess) > widest(p.energy) || known(found, guess) {
+			continue
+		}
+		if !h.confirmed(guess) {
 			continue
 		}
 		if z, ok := h.solver.refine(guess); ok {
@@ -119,21 +122,46 @@ func (h *hunt) poles() []Pole {
 	return found
 }
 
-// refine takes Newton's method to the zero of in near z.
+// confirmed reports whether the wave at the guess's own energy points at much
+// the same pole: cheap beside Newton's method in the complex plane, and where
+// nothing resonates the guesses follow the energy and fail it.
+func (h *hunt) confirmed(guess complex128) bool {
+	s := h.solver
+	near := real(guess) - s.near.Height
+	if near <= 0 {
+		return false
+	}
+	s.cross(level{real(guess), near, real(guess) - s.far.Height}, false)
+	p := s.divide(level{real(guess), near, real(guess) - s.far.Height})
+	again := complex(real(guess), 0) - 1/(p.inLog+complex(0, p.shift))
+	return cmplx.Abs(again-guess) <= math.Abs(imag(guess))
+}
+
+// known reports whether a guess is as good as a pole already found.
+func known(found []Pole, guess complex128) bool {
+	for _, p := range found {
+		if cmplx.Abs(guess-complex(p.Energy, -p.Width/2)) < 1e-3*p.Width {
+			return true
+		}
+	}
+	return false
+}
+
+// refine takes Newton's method to the zero of in near z. It gives up where
+// that leads away from z: what z pointed at was no pole, or one that another
+// probe knows better.
 func (s *Solver) refine(z complex128) (complex128, bool) {
 	const steps = 30
-	start := z
+	start, reach := z, 4*math.Abs(imag(z))+1e-9*math.Abs(real(z))
 	for range steps {
 		in, slope, _ := s.Incoming(z)
 		step := in / slope
-		if cmplx.IsNaN(step) || cmplx.IsInf(step) {
+		z -= step
+		if !(cmplx.Abs(z-start) <= reach) {
 			return z, false
 		}
-		z -= step
 		if cmplx.Abs(step) <= 1e-14*(math.Abs(real(z))+s.high-s.low)+1e-10*math.Abs(imag(z)) {
-			// Stay with the pole that was pointed at.
-			near := cmplx.Abs(z-start) <= 4*math.Abs(imag(start))+1e-9*math.Abs(real(z))
-			return z, near && imag(z) < 0 && real(z) > s.near.Height
+			return z, imag(z) < 0 && real(z) > s.near.Height
 		}
 	}
 	return z, false

@@ -111,18 +111,45 @@ func scale(g potential.Segment, x float64) float64 {
 
 func newSlice[N number](g potential.Segment, left, right float64, convert func(float64) N) slice[N] {
 	h := right - left
-	jet := func(p potential.Profile, factor float64) []N {
-		c := make([]float64, jetTerms)
-		if d := p.Degree(); d >= 0 {
-			c = c[:min(d+1, jetTerms)]
-		}
-		p.Jet(left+h/2, c)
-		out := make([]N, len(c))
-		for i, v := range c {
-			out[i] = convert(factor * v * h)
-			factor *= h / 2
-		}
-		return out
+	mass := jet(g.Mass, left+h/2, h, 1)
+	height := jet(g.Height, left+h/2, h, 2)
+	return slice[N]{
+		length: h, double: convert(2 * h),
+		mass:   converted(trim(mass, mass[0]), convert),
+		height: converted(trim(height, 1/mass[0]), convert),
 	}
-	return slice[N]{length: h, double: convert(2 * h), mass: jet(g.Mass, 1), height: jet(g.Height, 2)}
+}
+
+// jet returns factor h times the Taylor coefficients of p about x in units of
+// h/2.
+func jet(p potential.Profile, x, h, factor float64) []float64 {
+	c := make([]float64, jetTerms)
+	if d := p.Degree(); d >= 0 {
+		c = c[:min(d+1, jetTerms)]
+	}
+	p.Jet(x, c)
+	factor *= h
+	for i := range c {
+		c[i] *= factor
+		factor *= h / 2
+	}
+	return c
+}
+
+// trim drops the last coefficients as far as they are lost beside unit.
+func trim(c []float64, unit float64) []float64 {
+	const lost = 1e-20
+	n := len(c)
+	for n > 1 && math.Abs(c[n-1]) < lost*unit {
+		n--
+	}
+	return c[:n]
+}
+
+func converted[N number](c []float64, convert func(float64) N) []N {
+	out := make([]N, len(c))
+	for i, v := range c {
+		out[i] = convert(v)
+	}
+	return out
 }

@@ -127,9 +127,8 @@ func (s *Solver) spread(energy float64) float64 {
 func (s *Solver) crossFlat(e *element, energy float64) {
 	var f flatLayer
 	f.set(energy-e.height, e.mass, e.length)
-	density := f.density(&s.wave)
+	s.dwells[e.layer].add(f.density(&s.wave), s.wave.log+f.growth)
 	s.wave.apply(&f.m, &f.d, f.growth, f.turns)
-	s.dwells[e.layer].add(density, s.wave.log)
 }
 
 // crossLossy crosses a flat layer with loss: in one step, or, where the phase
@@ -144,8 +143,8 @@ func (s *Solver) crossLossy(e *element, energy float64) {
 	f.set(complex(energy-e.height, e.loss), e.mass, e.length/float64(n))
 	for range n {
 		density := f.density(s.wave.u(), s.wave.w())
+		s.dwells[e.layer].add(density, s.wave.log+f.growth)
 		s.wave.applyLossy(&f.m, &f.d, f.growth, 2*e.loss*density)
-		s.dwells[e.layer].add(density, s.wave.log)
 	}
 }
 
@@ -155,9 +154,8 @@ func (s *Solver) crossSmooth(e *element, energy float64) {
 		slices := s.smooths[e.smooth].realSlices(energy)
 		for i := len(slices) - 1; i >= 0; i-- {
 			t := s.real.cross(&slices[i], energy)
-			density := density(t, &s.wave)
+			s.dwells[e.layer].add(density(t, &s.wave), s.wave.log)
 			s.wave.apply(&t.m, &t.d, 0, 0)
-			s.dwells[e.layer].add(density, s.wave.log)
 		}
 		return
 	}
@@ -165,8 +163,8 @@ func (s *Solver) crossSmooth(e *element, energy float64) {
 	for i := len(slices) - 1; i >= 0; i-- {
 		t := s.cplx.cross(&slices[i], complex(energy, e.loss))
 		density := sampledDensity(&s.cplx, s.wave.u(), s.wave.w())
-		s.wave.applyLossy(&t.m, &t.d, 0, 2*e.loss*density)
 		s.dwells[e.layer].add(density, s.wave.log)
+		s.wave.applyLossy(&t.m, &t.d, 0, 2*e.loss*density)
 	}
 }
 
