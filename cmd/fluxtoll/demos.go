@@ -22,7 +22,7 @@ file of one, to start your own from; a table that the scenario refers to is
 shown by its own name.`,
 		Example: `  fluxtoll demos
   fluxtoll demos --show thin-barrier > mine.toml`,
-		Args: exactly(0, "none is"),
+		Args: exactly(0, "no argument is wanted"),
 		RunE: func(cmd *cobra.Command, _ []string) error {
 			if cmd.Flags().Changed("show") {
 				return showDemo(cmd.OutOrStdout(), show)
@@ -75,7 +75,7 @@ func showDemo(w io.Writer, name string) error {
 	if err == nil {
 		err = errors.New("fluxtoll: a demo is not in its own list")
 	}
-	return fmt.Errorf("--show %w", err)
+	return fmt.Errorf("--show: %w", err)
 }
 
 // completeDemo offers the names of the demos to the shell.

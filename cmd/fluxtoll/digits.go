@@ -27,14 +27,14 @@ func known(v, e float64, most int) string {
 // exponentOf is the decimal exponent of a positive number.
 func exponentOf(size float64) int { return int(math.Floor(math.Log10(size))) }
 
-// brief writes a number with two digits, with an exponent where it is small
-// or large.
+// brief writes a number with two digits, with an exponent where it is below
+// 1e-3 or 1000 and more.
 func brief(v float64) string {
 	size := math.Abs(v)
 	switch {
 	case v == 0:
 		return "0"
-	case size >= 0.095 && size < 999.5:
+	case size >= 9.95e-4 && size < 999.5:
 		return strconv.FormatFloat(v, 'f', max(0, 1-exponentOf(size)), 64)
 	}
 	return plainExponent(strconv.FormatFloat(v, 'e', 1, 64))

@@ -7,7 +7,6 @@ import (
 	"io"
 	"os"
 	"strings"
-	"syscall"
 )
 
 func main() {
@@ -40,8 +39,6 @@ func conclude(err error, stderr io.Writer) int {
 		return exitDone
 	case errors.As(err, &code):
 		return int(code)
-	case errors.Is(err, syscall.EPIPE): // nobody reads: nothing to say
-		return exitBadRequest
 	}
 	fmt.Fprintf(stderr, "fluxtoll: %s\n", strings.TrimSpace(err.Error()))
 	var short *shortfall

@@ -54,17 +54,25 @@ func timesIn(r *scenarios.Result) string {
 	return "times in " + r.Units.Time
 }
 
-// quantityRow shows values with the digits that the budget supports, or,
-// where there is no budget, the average's own error; the plane wave, which is
-// there to be compared, is kept short.
+// quantityRow shows the packet's value with the digits that its budget
+// supports, and those of the stationary road with as many, or with five where
+// the budget is larger than that. The plane wave, which is there to be
+// compared, is kept short.
 func quantityRow(q scenarios.Measure, room int) []string {
-	e := first(q.Budget, q.AverageError)
-	row := []string{q.Name, cell(q.PlaneWave, e, 10), cell(q.Average, e, room), cell(q.Packet, e, room), "-", "-", ""}
+	budget := first(q.Budget, q.AverageError)
+	stationary := min(budget, 1e-5*magnitude(q.Average))
+	row := []string{
+		q.Name, cell(q.PlaneWave, stationary, 10), cell(q.Average, max(stationary, first(q.AverageError)), room),
+		cell(q.Packet, budget, room), "-", "-", "",
+	}
 	if q.Difference != nil && q.Budget != nil {
 		row[4], row[5], row[6] = brief(*q.Difference), brief(*q.Budget), mark(q)
 	}
 	return row
 }
+
+// magnitude is the size of a value that may be missing.
+func magnitude(v *float64) float64 { return max(first(v), -first(v)) }
 
 // first is the first value that is there, or 0.
 func first(values ...*float64) float64 {
@@ -108,7 +116,8 @@ func ledgerText(r *scenarios.Result) string {
 	if r.Ledger == nil {
 		return ""
 	}
-	l, e := r.Ledger, probabilityBudget(r)
+	const digits = 1e-6 // at least: of what was counted itself, all are right
+	l, e := r.Ledger, min(digits, probabilityBudget(r))
 	return fmt.Sprintf("reflected %s + transmitted %s + lost %s + trapped %s = 1, to %s",
 		known(l.Reflected, e, 15), known(l.Transmitted, e, 15), known(l.Lost, e, 15), brief(l.Trapped), brief(max(l.Closure, -l.Closure)))
 }

@@ -25,10 +25,27 @@ says whether they agree within an error that is computed.`,
 		SilenceUsage:  true,
 		Version:       version(),
 	}
+	root.SuggestionsMinimumDistance = 2
 	root.SetVersionTemplate("{{.Version}}\n")
 	root.SetFlagErrorFunc(func(cmd *cobra.Command, err error) error { return hinted(cmd, err.Error()) })
 	root.AddCommand(newRun(), newDemos(), newVerify())
+	refuseUnknownHelp(root)
 	return root
+}
+
+// refuseUnknownHelp makes `help WORD` an error where WORD is no command.
+func refuseUnknownHelp(root *cobra.Command) {
+	root.InitDefaultHelpCmd()
+	help, _, err := root.Find([]string{"help"})
+	must(err)
+	help.Args = func(_ *cobra.Command, args []string) error {
+		if _, rest, err := root.Find(args); err != nil {
+			return err
+		} else if len(rest) > 0 {
+			return subcommand(root, rest)
+		}
+		return nil
+	}
 }
 
 // subcommand refuses words that are no command of the program.
@@ -48,12 +65,12 @@ func hinted(cmd *cobra.Command, msg string) error {
 	return fmt.Errorf("%s; '%s --help' says what is accepted", strings.TrimSpace(msg), cmd.CommandPath())
 }
 
-// exactly refuses any other number of arguments; wanted names them.
+// exactly refuses any other number of arguments; wanted says what is wanted.
 func exactly(n int, wanted string) cobra.PositionalArgs {
 	return func(cmd *cobra.Command, args []string) error {
 		if len(args) == n {
 			return nil
 		}
-		return hinted(cmd, fmt.Sprintf("%d arguments given; %s accepted", len(args), wanted))
+		return hinted(cmd, fmt.Sprintf("%s, and %d were given", wanted, len(args)))
 	}
 }

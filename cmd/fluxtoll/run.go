@@ -28,7 +28,7 @@ where the scenario is in natural units.`,
 		Example: `  fluxtoll run collector-step
   fluxtoll run mine.toml --json
   fluxtoll run thin-barrier --pade 1 --time-step "0.2 fs"`,
-		Args:              exactly(1, "one, a scenario file, a demo or -, is"),
+		Args:              exactly(1, "one argument is wanted, a scenario file, a demo or -"),
 		ValidArgsFunction: completeScenario,
 		RunE: func(cmd *cobra.Command, args []string) error {
 			file, err := openScenario(args[0], cmd.InOrStdin())

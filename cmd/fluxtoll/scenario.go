@@ -14,6 +14,8 @@ import (
 // the ending .toml is a demo. So a file shadows a demo of the same name.
 func openScenario(name string, stdin io.Reader) (*scenarios.File, error) {
 	switch {
+	case name == "":
+		return nil, errors.New("the name of the scenario is empty; a file, a demo or - is accepted")
 	case name == "-":
 		return scenarios.Read("standard input", stdin, scenarios.Beside("."))
 	case isFile(name) || strings.ContainsRune(name, os.PathSeparator) || strings.HasSuffix(name, ".toml"):

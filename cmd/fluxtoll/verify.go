@@ -20,7 +20,7 @@ func newVerify() *cobra.Command {
 		Long: `verify computes scattering problems with published answers on this machine and
 prints, for each, the source, the number expected, the number found and the
 error. It exits 1 if one fails.`,
-		Args: exactly(0, "none is"),
+		Args: exactly(0, "no argument is wanted"),
 		RunE: func(cmd *cobra.Command, _ []string) error {
 			v, err := verify(cmd.Context())
 			if err != nil {
