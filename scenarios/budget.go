@@ -3,6 +3,7 @@ package scenarios
 import (
 	"math"
 
+	"fluxtoll/potential/stationary"
 	"fluxtoll/propagate"
 )
 
@@ -29,25 +30,37 @@ func (t terms) total() errorSet {
 func (t *Trial) terms() terms {
 	return terms{
 		space: t.Plan.grids.space, edges: t.Plan.grids.edges,
-		time: t.timeTerm(), packet: t.packetTerm(),
+		time: t.timeTerm(), packet: t.Plan.start0,
 		tail:    t.tail(t.Run.Ledger(), t.Run.Remaining, t.Run.Lifetime),
 		average: t.averageTerm(), rounding: t.roundingTerm(),
 	}
 }
 
 // means are the mean arrivals of the averages.
-func (t *Trial) means() partMeans {
-	a := t.Averages
-	transmitted, reflected := t.averageArrivals()
-	return partMeans{a.Transmitted.Value, a.Reflected.Value, transmitted.Value, reflected.Value}
+func (t *Trial) means() partMeans { return timedMeans(t.Averages, t.Plan.geometry) }
+
+// timedMeans are the parts and their mean arrivals; a part too small to be
+// timed has none.
+func timedMeans(a *stationary.Averages, g geometry) partMeans {
+	transmitted, reflected := averageArrivals(a, g)
+	m := partMeans{transmitted: a.Transmitted.Value, reflected: a.Reflected.Value}
+	if m.transmitted > leastPart {
+		m.timeTransmitted = transmitted.Value
+	}
+	if m.reflected > leastPart {
+		m.timeReflected = reflected.Value
+	}
+	return m
 }
 
-// timeTerm is the spectrum average of the step's phase error times each time,
-// and the aliasing of a flow sampled once a step: its spectrum at 2 pi/dt.
+// timeTerm is the spectrum average of the step's phase error times each time;
+// the aliasing of a flow sampled once a step, its spectrum at 2 pi/dt; and one
+// step for what was in the wrong place at the start, whose motion is not
+// resolved.
 func (t *Trial) timeTerm() errorSet {
 	var e errorSet
 	m, p := t.means(), t.Plan
-	for _, s := range p.samples {
+	for _, s := range p.all {
 		slope := math.Abs(p.Pade.SlopeError((s.energy - p.Origin) * p.TimeStep))
 		if slope < 1 {
 			slope /= 1 - slope
@@ -63,7 +76,8 @@ func (t *Trial) timeTerm() errorSet {
 			e.arrivalReflected += s.weight * s.Reflection * reflected * slope / m.reflected
 		}
 	}
-	alias := t.aliasing()
+	front := math.Erfc(p.start/t.Scenario.Packet.Length/math.Sqrt2) / 2
+	alias := t.aliasing() + front*p.TimeStep
 	return e.plus(t.perPart(alias, alias))
 }
 
@@ -81,24 +95,13 @@ func (t *Trial) aliasing() float64 {
 // perPart divides a time-like error by each part's probability, and gives the
 // dwell its own.
 func (t *Trial) perPart(time, dwell float64) errorSet {
-	e := errorSet{dwell: dwell}
-	if a := t.Averages; true {
-		if a.Transmitted.Value > leastPart {
-			e.arrivalTransmitted = time / a.Transmitted.Value
-		}
-		if a.Reflected.Value > leastPart {
-			e.arrivalReflected = time / a.Reflected.Value
-		}
+	e, a := errorSet{dwell: dwell}, t.Averages
+	if a.Transmitted.Value > leastPart {
+		e.arrivalTransmitted = time / a.Transmitted.Value
 	}
-	return e
-}
-
-// packetTerm charges the probability that was in the wrong place or moved the
-// wrong way at the start to every part, at a time off by the whole run.
-func (t *Trial) packetTerm() errorSet {
-	o, m := t.Plan.overlap, t.means()
-	e := t.perPart(o*math.Max(m.timeTransmitted, m.timeReflected), o*t.Averages.Dwell.Value)
-	e.transmitted, e.reflected, e.lost = o, o, o
+	if a.Reflected.Value > leastPart {
+		e.arrivalReflected = time / a.Reflected.Value
+	}
 	return e
 }
 
@@ -144,7 +147,10 @@ func (t *Trial) roundingTerm() errorSet {
 // summary reduces the terms to one number each.
 func (t *Trial) summary(list terms) Budget {
 	m := t.means()
-	worst := func(e errorSet) float64 { return e.relative(t.Averages, m) }
+	worst := func(e errorSet) float64 {
+		probability, time := e.relative(t.Averages, m)
+		return math.Max(probability, time)
+	}
 	return Budget{
 		worst(list.space), worst(list.time), worst(list.edges), worst(list.packet),
 		worst(list.tail), worst(list.average), worst(list.rounding),

@@ -63,18 +63,27 @@ func (s *Scenario) leads() (near, far potential.Lead) {
 // be reached soon.
 const farLengths = 3
 
+// jump is the size, relative to its peak, at which the packet is cut off
+// where the grid ends. A jump sends out waves of every energy, and what is
+// sampled once a step sees them as its own.
+func (s *Scenario) jump() float64 { return math.Min(1e-9, 1e-3*s.Tolerance) }
+
 // place chooses what the scenario leaves open. clear is the number of packet
 // lengths at which the packet's tail is negligible.
 func (s *Scenario) place(clear float64) geometry {
 	g := geometry{side: s.Packet.Side, width: s.Structure.Width()}
 	reach := clear * s.Packet.Length
 	g.start = s.roundUp(reach)
+	if s.Planes.Near != nil {
+		// Halfway at most: as far from the plane as from the structure.
+		g.near = g.before(*s.Planes.Near)
+		g.start = math.Min(g.start, g.near/2)
+	}
 	if s.Packet.Start != nil {
 		g.start = g.before(*s.Packet.Start)
 	}
-	g.near = s.roundUp(g.start + reach)
-	if s.Planes.Near != nil {
-		g.near = g.before(*s.Planes.Near)
+	if s.Planes.Near == nil {
+		g.near = s.roundUp(g.start + reach)
 	}
 	g.far = s.roundUp(farLengths * s.Packet.Length)
 	if s.Planes.Far != nil {
@@ -83,7 +92,7 @@ func (s *Scenario) place(clear float64) geometry {
 			g.far = -*s.Planes.Far
 		}
 	}
-	g.behind = math.Max(g.near, g.start+reach)
+	g.behind = math.Max(g.near, g.start+2*math.Sqrt(-math.Log(s.jump()))*s.Packet.Length)
 	return g
 }
 

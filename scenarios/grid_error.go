@@ -142,15 +142,21 @@ func (s sample) weigh(d deviation, g geometry, m partMeans) errorSet {
 }
 
 // relative expresses times as parts of what they belong to and returns the
-// largest: what is held against the tolerance.
-func (e errorSet) relative(a *stationary.Averages, m partMeans) float64 {
-	worst := math.Max(e.transmitted, math.Max(e.reflected, e.lost))
+// largest error of a probability and of a time.
+func (e errorSet) relative(a *stationary.Averages, m partMeans) (probability, time float64) {
+	probability = math.Max(e.transmitted, math.Max(e.reflected, e.lost))
 	for _, t := range [][2]float64{
 		{e.arrivalTransmitted, m.timeTransmitted}, {e.arrivalReflected, m.timeReflected}, {e.dwell, a.Dwell.Value},
 	} {
 		if t[1] > 0 {
-			worst = math.Max(worst, t[0]/t[1])
+			time = math.Max(time, t[0]/t[1])
 		}
 	}
-	return worst
+	return probability, time
+}
+
+// of returns the largest error as a multiple of what is allowed.
+func (e errorSet) of(s *Scenario, a *stationary.Averages, m partMeans) float64 {
+	probability, time := e.relative(a, m)
+	return math.Max(probability/s.Tolerance, time/s.timeTolerance())
 }

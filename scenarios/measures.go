@@ -24,7 +24,9 @@ func (t *Trial) measures(limits *errorSet) []Measure {
 	} else {
 		m.delays()
 	}
-	m.dwell()
+	if t.Scenario.Structure.Width() > 0 {
+		m.dwell()
+	}
 	return m.out
 }
 
@@ -96,12 +98,12 @@ func (m *measurer) times() {
 			arrival := *p.planeDelay + p.planeFlight
 			plane = &arrival
 		}
-		allowed := m.Scenario.Tolerance * p.arrival.Value
+		allowed := m.Scenario.timeTolerance() * p.arrival.Value
 		m.add(Measure{Name: "arrival_" + p.name, Unit: unit}, p.arrival, plane, &p.packet, p.budget, allowed, scale)
 	}
 	for _, p := range both {
 		packet := p.packet - (p.arrival.Value - p.delay.Value)
-		allowed := m.Scenario.Tolerance * p.arrival.Value
+		allowed := m.Scenario.timeTolerance() * p.arrival.Value
 		m.add(Measure{Name: "group_delay_" + p.name, Unit: unit}, p.delay, p.planeDelay, &packet, p.budget, allowed, scale)
 	}
 }
@@ -150,7 +152,7 @@ func (m *measurer) dwell() {
 	}
 	a := m.Averages.Dwell
 	m.add(Measure{Name: "dwell", Unit: m.Scenario.Scale.TimeUnit}, a, &m.PlaneWave.Dwell, packet,
-		budget, m.Scenario.Tolerance*a.Value, m.Scenario.Scale.Time)
+		budget, m.Scenario.timeTolerance()*a.Value, m.Scenario.Scale.Time)
 }
 
 // notes are remarks that a reader of the numbers needs.

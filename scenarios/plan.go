@@ -22,9 +22,10 @@ type Plan struct {
 	Expected  float64 // time at which the run is expected to end
 	Mesh      *propagate.Mesh
 
-	samples []sample
+	samples []sample // merged: for what costs a solve each
+	all     []sample
 	grids   gridError
-	overlap float64 // packet term: probability at the start where it should not be
+	start0  errorSet // what the start does to the averages: the packet term
 }
 
 // LimitError says that a run was refused because it would exceed a limit.
@@ -62,22 +63,16 @@ type planner struct {
 	averages *stationary.Averages
 	near     potential.Lead
 	far      potential.Lead
-	smallest float64 // the smaller of the parts that are to be timed
 }
 
 // newPlan makes the plan. The error is a *LimitError where the run would be
 // too large.
 func newPlan(s *Scenario, a *stationary.Averages, forced Forced) (*Plan, error) {
 	forced.Limits = forced.orDefault()
-	p := &planner{Plan: &Plan{}, scenario: s, forced: forced, averages: a, smallest: 1}
+	p := &planner{Plan: &Plan{}, scenario: s, forced: forced, averages: a}
 	p.near, p.far = s.leads()
-	for _, part := range []float64{a.Transmitted.Value, a.Reflected.Value} {
-		if part > leastPart {
-			p.smallest = math.Min(p.smallest, part)
-		}
-	}
-	p.positions()
 	p.spectrum()
+	p.positions()
 	if err := p.grid(); err != nil {
 		return nil, err
 	}
@@ -87,30 +82,14 @@ func newPlan(s *Scenario, a *stationary.Averages, forced Forced) (*Plan, error) 
 	return p.Plan, nil
 }
 
-// positions places start and planes so that the packet's tails are negligible
-// beside the smallest part.
-func (p *planner) positions() {
-	n := clearance(sharePacket * p.scenario.Tolerance * p.smallest)
-	p.geometry = p.scenario.place(n)
-	l := p.scenario.Packet.Length
-	beyond := math.Erfc(p.start/l/math.Sqrt2)/2 + math.Erfc((p.geometry.near-p.start)/l/math.Sqrt2)/2
-	p.overlap = beyond + wrongWay(p.scenario.Packet)
-}
-
-// wrongWay bounds the effect of the components that move away from the
-// structure: their probability erfc(sqrt2 k0 s)/2 and their interference
-// with the mirror components, 2 exp(-2 s^2 k0^2).
-func wrongWay(p Packet) float64 {
-	return math.Erfc(math.Sqrt2*p.K0*p.Length)/2 + 2*math.Exp(-2*p.K0*p.K0*p.Length*p.Length)
-}
-
 // energy is the total energy of a wave number in the packet's lead.
 func (p *planner) energy(k float64) float64 { return p.near.Height + k*k/(2*p.near.Mass) }
 
 // spectrum finds the band and the samples.
 func (p *planner) spectrum() {
 	p.Low, p.High = band(p.averages, p.energy, 1e-2*p.scenario.Tolerance)
-	p.samples = samples(p.averages, p.energy)
+	p.samples = samples(p.averages, maxSamples, p.energy)
+	p.all = samples(p.averages, len(p.averages.Nodes), p.energy)
 	p.Origin = p.scenario.Packet.Energy
 }
 
@@ -128,14 +107,19 @@ func (p *planner) grid() error {
 		p.Phase = p.forced.Element * math.Sqrt(2*p.near.Mass*(p.High-p.near.Height))
 	}
 	const refinements = 5
+	best := math.Inf(1)
 	for range refinements {
-		if err := p.mesh(); err != nil {
+		mesh, err := p.mesh()
+		if err != nil {
 			return err
 		}
-		p.grids = compareGrid(p.Mesh, p.geometry, p.samples)
-		worst := p.grids.space.relative(p.averages, meanTimes(p.samples, p.geometry))
-		if p.forced.Element > 0 || worst <= shareSpace*p.scenario.Tolerance {
-			return nil
+		grids := compareGrid(mesh, p.geometry, p.samples)
+		worst := grids.space.of(p.scenario, p.averages, p.means(p.geometry))
+		if worst < best {
+			best, p.Mesh, p.grids = worst, mesh, grids
+		}
+		if p.forced.Element > 0 || best <= shareSpace || worst > best {
+			break
 		}
 		p.Phase *= 0.75
 	}
@@ -143,7 +127,7 @@ func (p *planner) grid() error {
 }
 
 // mesh builds the mesh for the present order and phase.
-func (p *planner) mesh() error {
+func (p *planner) mesh() (*propagate.Mesh, error) {
 	limit := math.Max(shareEdges*p.scenario.Tolerance/4, 1e-13)
 	nearEdge := p.edge(p.near, limit, func(s sample) float64 { return s.Reflection / p.averages.Reflected.Value })
 	farEdge := p.edge(p.far, limit, func(s sample) float64 { return s.Transmission / p.averages.Transmitted.Value })
@@ -152,21 +136,33 @@ func (p *planner) mesh() error {
 	}
 	resolution := propagate.Resolution{
 		Order: p.Order, Phase: p.Phase, Low: p.Low, High: p.High,
-		Height:   1e-2 * p.scenario.Tolerance * (p.scenario.Packet.Energy - p.near.Height),
+		Height:   p.heightTolerance(),
 		MaxNodes: p.forced.Nodes,
 	}
 	layout, err := propagate.NewLayout(p.scenario.Structure, resolution, p.extent(), nearEdge, farEdge)
 	if err != nil {
 		if size, ok := err.(*propagate.SizeError); ok {
-			return &LimitError{"grid nodes", size.Nodes, float64(size.Limit), "--max-nodes"}
+			return nil, &LimitError{"grid nodes", size.Nodes, float64(size.Limit), "--max-nodes"}
 		}
-		return err
+		return nil, err
 	}
 	if bytes := layout.Bytes(); bytes > float64(p.forced.Bytes) {
-		return &LimitError{"bytes of memory", bytes, float64(p.forced.Bytes), "--max-memory"}
+		return nil, &LimitError{"bytes of memory", bytes, float64(p.forced.Bytes), "--max-memory"}
 	}
-	p.Mesh = propagate.NewMesh(layout)
-	return nil
+	return propagate.NewMesh(layout), nil
+}
+
+// heightTolerance is how well an element must resolve V: a part of the
+// tolerance, but no better than the sums that measure it.
+func (p *planner) heightTolerance() float64 {
+	kinetic := p.scenario.Packet.Energy - p.near.Height
+	span := math.Abs(p.High) + math.Abs(p.Low)
+	for _, g := range p.scenario.Structure.Segments {
+		lo, hi := g.Height.Range(g.From, g.To)
+		span = math.Max(span, math.Max(math.Abs(lo), math.Abs(hi)))
+	}
+	const rounding = 5e-14 // of a sum of some hundred terms
+	return math.Max(1e-2*p.scenario.Tolerance*kinetic, rounding*span)
 }
 
 // edge chooses an edge for a lead; share is what part of its outgoing wave an

@@ -15,7 +15,9 @@ func (p *planner) time() error {
 		lowest, highest = p.forced.Pade, p.forced.Pade
 	}
 	cheapest := math.Inf(1)
-	for m := lowest; m <= highest; m++ {
+	// Even members leave waves far above the band at rest (their factor tends
+	// to 1, that of odd members to -1), where they are taken for part of it.
+	for m := lowest; m <= highest; m += 2 {
 		pade, err := propagate.NewPade(m)
 		if err != nil {
 			return err
@@ -37,7 +39,7 @@ func (p *planner) step(pade propagate.Pade) float64 {
 		return p.forced.TimeStep
 	}
 	dt := aliasFree / (p.High - p.Low)
-	goal := shareTime * p.scenario.Tolerance
+	goal := shareTime * p.scenario.timeTolerance()
 	for range 60 {
 		if timeError(p.samples, pade, dt, p.Origin) <= goal {
 			break
@@ -50,9 +52,9 @@ func (p *planner) step(pade propagate.Pade) float64 {
 	return dt
 }
 
-// aliasFree is the largest product of step and band width: below 2 pi, with
+// aliasFree is the largest product of step and band width: half of 2 pi, with
 // room for what lies outside the band.
-const aliasFree = 4.0
+const aliasFree = 3.0
 
 // timeError is the largest, over what is sent, transmitted and reflected, of
 // the mean relative error that the step makes in a time.

@@ -149,12 +149,17 @@ func (t *Trial) passages() (near, far propagate.Passage) {
 
 // averageArrivals are the mean arrivals at the planes on the stationary road.
 func (t *Trial) averageArrivals() (transmitted, reflected stationary.Mean) {
-	a, p := t.Averages, t.Plan
+	return averageArrivals(t.Averages, t.Plan.geometry)
+}
+
+// averageArrivals are the flights outside the structure and the group delays,
+// averaged over what is transmitted and what is reflected.
+func averageArrivals(a *stationary.Averages, g geometry) (transmitted, reflected stationary.Mean) {
 	if a.Transmitted.Value > 0 {
-		transmitted = combine(a.GroupDelayTransmitted, p.start, a.SlownessInTransmitted, p.far, a.SlownessOutTransmitted)
+		transmitted = combine(a.GroupDelayTransmitted, g.start, a.SlownessInTransmitted, g.far, a.SlownessOutTransmitted)
 	}
 	if a.Reflected.Value > 0 {
-		reflected = combine(a.GroupDelayReflected, p.start+p.near, a.SlownessInReflected, 0, stationary.Mean{})
+		reflected = combine(a.GroupDelayReflected, g.start+g.near, a.SlownessInReflected, 0, stationary.Mean{})
 	}
 	return transmitted, reflected
 }

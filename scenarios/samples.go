@@ -1,8 +1,6 @@
 package scenarios
 
 import (
-	"math"
-
 	"fluxtoll/potential/stationary"
 )
 
@@ -17,10 +15,10 @@ type sample struct {
 // against.
 const maxSamples = 240
 
-// samples turns the quadrature points of the averages into at most maxSamples
+// samples turns the quadrature points of the averages into at most about limit
 // samples: neighbours are merged so that each holds about the same share of
 // what is transmitted, reflected and sent, and stands at the middle one.
-func samples(a *stationary.Averages, lead leadEnergy) []sample {
+func samples(a *stationary.Averages, limit int, lead leadEnergy) []sample {
 	share := func(n stationary.Node) float64 {
 		s := n.Weight
 		if a.Transmitted.Value > 0 {
@@ -36,8 +34,8 @@ func samples(a *stationary.Averages, lead leadEnergy) []sample {
 		total += share(n)
 	}
 	bin := 0.0
-	if len(a.Nodes) > maxSamples {
-		bin = total / maxSamples
+	if len(a.Nodes) > limit {
+		bin = total / float64(limit)
 	}
 	return merge(a.Nodes, share, bin, lead)
 }
@@ -92,10 +90,4 @@ func band(a *stationary.Averages, energy leadEnergy, fraction float64) (low, hig
 		return energy(a.Nodes[min(max(i, 0), len(a.Nodes)-1)].K)
 	}
 	return cut(0, 1), cut(len(a.Nodes)-1, -1)
-}
-
-// clearance is the number of packet lengths at which a Gaussian's tail holds
-// less than a fraction: erfc(n/sqrt2)/2 = fraction.
-func clearance(fraction float64) float64 {
-	return math.Sqrt2 * math.Erfcinv(math.Max(2*fraction, 1e-300))
 }

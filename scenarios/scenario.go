@@ -1,6 +1,10 @@
 package scenarios
 
-import "fluxtoll/potential"
+import (
+	"math"
+
+	"fluxtoll/potential"
+)
 
 // Scenario is one packet on one structure, ready to be computed: everything
 // in internal units, in which hbar = 1 and the packet's lead has mass 1 and
@@ -41,3 +45,10 @@ type Scale struct {
 	Length, Energy, Time             float64
 	LengthUnit, EnergyUnit, TimeUnit string
 }
+
+// leastTimeTolerance is the smallest relative error asked of a time: a mean
+// time is a sum over the whole run, and rounding in psi weighs as long as it.
+const leastTimeTolerance = 1e-10
+
+// timeTolerance is the relative error allowed for times.
+func (s *Scenario) timeTolerance() float64 { return math.Max(s.Tolerance, leastTimeTolerance) }

@@ -81,7 +81,7 @@ func (t *Trial) ending() propagate.Ending {
 		Steps: t.forced.orDefault().Steps, Time: math.Inf(1),
 		Settled: func(l *propagate.Ledger, remaining, lifetime float64) bool {
 			tail := t.tail(l, remaining, lifetime)
-			return tail.relative(t.Averages, t.means()) <= shareTail*t.Scenario.Tolerance
+			return tail.of(t.Scenario, t.Averages, t.means()) <= shareTail
 		},
 	}
 	if t.forced.StopTime > 0 {

@@ -1,0 +1,157 @@
+package scenarios
+
+import (
+	"math"
+	"math/cmplx"
+)
+
+// startError is what the start of the packet does to the averages. The packet
+// is a Gaussian cut off where the grid ends, and its front reaches a little
+// into the structure; both cuts change its spectrum by the factor
+//
+//	|1 - erfc(z)/2|^2 = 1 - Re erfc(z) + |erfc(z)|^2/4,
+//	z = d/(2 length) + i (k-k0) length,
+//
+// d the distance from the centre to the cut. The averages of the change are
+// computed with their sign, since for smooth amplitudes its oscillation in k
+// cancels, and for a narrow resonance it does not. The front's cut is charged
+// twice: what lies beyond it is not missing, but it is no incoming wave
+// either.
+func (p *planner) startError(g geometry) errorSet {
+	front := p.cutError(g, g.start)
+	back := p.cutError(g, g.behind-g.start)
+	beyond := func(d float64) float64 { return math.Erfc(d/p.scenario.Packet.Length/math.Sqrt2) / 2 }
+	total := front.plus(front).plus(back).plus(p.mismatch(g))
+	return total.plus(p.misplaced(g, wrongWay(p.scenario.Packet)+beyond(g.start)+beyond(g.near-g.start)))
+}
+
+// mismatch is the effect of the packet's front on times that are sampled once a
+// step. Where the front lies in the structure it is no free wave, and sends
+// out waves above the band that the step does not follow. Their amplitude is
+// that of the front, exp(-d^2/(4 length^2)); the factors bound what was
+// measured on wells, barriers and point potentials at the longest step.
+func (p *planner) mismatch(g geometry) errorSet {
+	const inLayers, atPlanes = 0.2, 1e-3
+	d := g.start / p.scenario.Packet.Length
+	front, m := math.Exp(-d*d/4), p.means(g)
+	e := errorSet{dwell: inLayers * front * p.averages.Dwell.Value}
+	if m.transmitted > leastPart {
+		e.arrivalTransmitted = atPlanes * front * m.timeTransmitted
+	}
+	if m.reflected > leastPart {
+		e.arrivalReflected = atPlanes * front * m.timeReflected
+	}
+	return e
+}
+
+// misplaced charges a probability to every part, at a time off by the whole
+// flight; what a bound state catches of it stays in the layers for as long.
+func (p *planner) misplaced(g geometry, probability float64) errorSet {
+	e := errorSet{
+		transmitted: probability, reflected: probability, lost: probability,
+	}
+	m := p.means(g)
+	flight := probability * math.Max(m.timeTransmitted, m.timeReflected)
+	if g.width > 0 {
+		e.dwell = flight
+	}
+	if m.transmitted > leastPart {
+		e.arrivalTransmitted = flight / m.transmitted
+	}
+	if m.reflected > leastPart {
+		e.arrivalReflected = flight / m.reflected
+	}
+	return e
+}
+
+// means are the mean arrivals for a geometry.
+func (p *planner) means(g geometry) partMeans {
+	return timedMeans(p.averages, g)
+}
+
+// cutError is the error that one cut at distance d makes.
+func (p *planner) cutError(g geometry, d float64) errorSet {
+	length, m := p.scenario.Packet.Length, p.means(g)
+	var sum errorSet
+	for _, n := range p.averages.Nodes {
+		z := complex(d/(2*length), (n.K-p.scenario.Packet.K0)*length)
+		c := erfc(z)
+		change := n.Weight * (square(c)/4 - real(c))
+		// A cut also moves the centre of the packet as a wave number sees it.
+		shift := n.Weight * real(cmplx.Exp(-z*z)) * length / math.SqrtPi / n.Amplitudes.SpeedIn
+		s := sample{Amplitudes: n.Amplitudes}
+		t, r := s.arrivals(g)
+		sum = sum.plus(errorSet{
+			transmitted: change * s.Transmission, reflected: change * s.Reflection,
+			lost: change * s.Absorption, dwell: change * s.Dwell,
+			arrivalTransmitted: s.Transmission * (change*(t-m.timeTransmitted) + shift),
+			arrivalReflected:   s.Reflection * (change*(r-m.timeReflected) + shift),
+		})
+	}
+	return sum.magnitudes(m)
+}
+
+// magnitudes makes every error positive and turns sums over a part into means.
+func (e errorSet) magnitudes(m partMeans) errorSet {
+	per := func(v, part float64) float64 {
+		if part <= leastPart {
+			return 0
+		}
+		return math.Abs(v) / part
+	}
+	return errorSet{
+		math.Abs(e.transmitted), math.Abs(e.reflected), math.Abs(e.lost),
+		per(e.arrivalTransmitted, m.transmitted), per(e.arrivalReflected, m.reflected), math.Abs(e.dwell),
+	}
+}
+
+func square(c complex128) float64 { return real(c)*real(c) + imag(c)*imag(c) }
+
+// erfc is the complementary error function for Re z >= 1, by the continued
+// fraction of M. Abramowitz and I. A. Stegun, Handbook of Mathematical
+// Functions, 7.1.14, evaluated from its tail.
+func erfc(z complex128) complex128 {
+	const terms = 60
+	f := z
+	for n := terms; n > 0; n-- {
+		f = z + complex(float64(n)/2, 0)/f
+	}
+	return cmplx.Exp(-z*z) / (f * complex(math.SqrtPi, 0))
+}
+
+// wrongWay bounds the effect of the components that move away from the
+// structure: their probability erfc(sqrt2 k0 s)/2 and their interference
+// with the mirror components, 2 exp(-2 s^2 k0^2).
+func wrongWay(p Packet) float64 {
+	return math.Erfc(math.Sqrt2*p.K0*p.Length)/2 + 2*math.Exp(-2*p.K0*p.K0*p.Length*p.Length)
+}
+
+// clearance is the number of packet lengths at which a Gaussian's tail holds
+// less than a fraction: erfc(n/sqrt2)/2 = fraction.
+func clearance(fraction float64) float64 {
+	return math.Sqrt2 * math.Erfcinv(math.Max(2*fraction, 1e-300))
+}
+
+// positions places start and planes: as close as the packet's tails allow, or
+// as far as the scenario's own positions let them be.
+func (p *planner) positions() {
+	const step, most = 0.25, 40
+	farthest := p.scenario.place(most)
+	n := clearance(sharePacket * p.scenario.Tolerance)
+	for {
+		p.geometry = p.scenario.place(n)
+		p.start0 = p.startError(p.geometry)
+		if n >= most || p.excess() <= sharePacket || p.geometry == farthest {
+			return
+		}
+		n += step
+	}
+}
+
+// excess is the start's error, less what no distance removes, as a multiple
+// of the tolerance.
+func (p *planner) excess() float64 {
+	m := p.means(p.geometry)
+	wrong := p.misplaced(p.geometry, wrongWay(p.scenario.Packet))
+	return p.start0.of(p.scenario, p.averages, m) - wrong.of(p.scenario, p.averages, m)
+}
