@@ -1,7 +1,6 @@
 package main
 
 import (
-	"errors"
 	"fmt"
 	"io"
 	"strings"
@@ -59,23 +58,28 @@ func listDemos(w io.Writer) error {
 
 // showDemo prints the bytes of a demo's file, or of a table of one.
 func showDemo(w io.Writer, name string) error {
+	text, err := demoText(name)
+	if err != nil {
+		return fmt.Errorf("--show: %w", err)
+	}
+	_, err = io.WriteString(w, text)
+	return err
+}
+
+// demoText is the file of a demo, or a table of one.
+func demoText(name string) (string, error) {
 	for _, d := range scenarios.Demos() {
 		if d.Name == name {
-			_, err := io.WriteString(w, d.Text)
-			return err
+			return d.Text, nil
 		}
 		for _, t := range d.Tables {
 			if t.Name == name {
-				_, err := io.WriteString(w, t.Text)
-				return err
+				return t.Text, nil
 			}
 		}
 	}
-	_, err := scenarios.OpenDemo(name)
-	if err == nil {
-		err = errors.New("fluxtoll: a demo is not in its own list")
-	}
-	return fmt.Errorf("--show: %w", err)
+	_, err := scenarios.OpenDemo(name) // which says what there is
+	return "", err
 }
 
 // completeDemo offers the names of the demos to the shell.
