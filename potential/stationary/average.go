@@ -132,17 +132,16 @@ func (q *quadrature) survey(ctx context.Context) error {
 	}
 	var limit error
 	for _, st := range q.stretches {
-		h := hunt{solver: s, stretch: st, budget: max(0, q.options.MaxEvaluations/2-q.used)}
-		err := h.search(ctx, 8)
-		q.used += len(h.probes)
-		if err != nil {
-			limit = err
-			if !errors.Is(err, ErrEvaluations) {
-				return err
-			}
+		h := hunt{solver: s, stretch: st, budget: q.options.MaxEvaluations/2 - q.used}
+		if err := h.search(ctx, 8); err != nil {
+			return err
 		}
+		q.used += len(h.probes)
 		q.poles = append(q.poles, h.poles(widest)...)
 		q.unresolved = append(q.unresolved, h.unresolved...)
+		if h.limit != nil {
+			limit = h.limit
+		}
 	}
 	q.poles = distinct(q.poles)
 	return limit

@@ -17,8 +17,8 @@ func (q *quadrature) outside() ([]float64, error) {
 			return nil, err
 		}
 	}
-	for _, p := range q.unresolved {
-		q.hidden(p, out)
+	for _, g := range q.unresolved {
+		q.hidden(g, out)
 	}
 	return out, nil
 }
@@ -65,38 +65,60 @@ func (q *quadrature) beyond(st *stretch, x float64, row, out []float64) error {
 	return nil
 }
 
-// hidden adds what a resonance at p that cannot be resolved may bring. With
+// hidden adds what resonances in a gap may bring. With
 // T = WL WR/(e^2 + W^2/4), W = WL + WR, and a dwell time WL/(e^2 + W^2/4)
 // (G. Breit and E. Wigner, Phys. Rev. 49, 519 (1936)) the integrals over the
-// energy are at most 2 pi min(WL, WR) and 2 pi; over delays at most pi/2 and
-// pi. The width to the far lead is T over the dwell time at resonance.
-func (q *quadrature) hidden(p probe, out []float64) {
+// energy are at most 2 pi min(WL, WR) and 2 pi; over delays no more than 2 pi.
+// The width to the far lead is T over the dwell time at resonance; where the
+// search stopped early it may be anything up to the gap itself.
+func (q *quadrature) hidden(g gap, out []float64) {
 	s := q.solver
-	near := p.energy - s.near.Height
-	k := math.Sqrt(2 * s.near.Mass * near)
-	v := k / s.near.Mass
-	var a Amplitudes
-	l := level{p.energy, near, p.energy - s.far.Height}
-	if !(near > 0) || s.at(l, &a) != nil || a.Dwell == 0 {
+	near := g.from.energy - s.near.Height
+	v := math.Sqrt(2 * near / s.near.Mass)
+	width, density := q.widest(g)
+	if !(near > 0) || density == 0 {
 		return
 	}
-	g := math.Exp(q.spectrum.logDensity(k)) / v
-	width := min(a.Transmission/a.Dwell, 1e-12*math.Abs(near))
-	out[sumR] += 2 * math.Pi * width * g
-	out[sumSlowR] += 2 * math.Pi * width * g / v
-	out[sumDelayR] += 2 * math.Pi * g
-	out[sumDwell] += 2 * math.Pi * g
-	for i := range s.layers {
-		out[sums+i] += 2 * math.Pi * g
-	}
+	jumps := max(1, math.Round(math.Abs(g.to.phase-g.from.phase)/math.Pi))
+	n := 2 * math.Pi * jumps * density / v
+	out[sumR] += n * width
+	out[sumSlowR] += n * width / v
+	out[sumDelayR] += n
+	out[sumDwell] += n
 	if s.lossy {
-		out[sumA] += 2 * math.Pi * 1e-12 * near * g
+		out[sumA] += n * math.Abs(g.to.energy-g.from.energy)
 	}
-	if a.SpeedOut > 0 {
-		t := math.Exp(q.spectrum.logDensity(k)-q.window.peak) / v
-		out[sumT] += 2 * math.Pi * width * t
-		out[sumDelayT] += 2 * math.Pi * t
-		out[sumSlowInT] += 2 * math.Pi * width * t / v
-		out[sumSlowOutT] += 2 * math.Pi * width * t / a.SpeedOut
+	for i := range s.layers {
+		out[sums+i] += n
 	}
+	if far := g.from.energy - s.far.Height; far > 0 {
+		t := n * math.Exp(-q.window.peak)
+		out[sumT] += t * width
+		out[sumDelayT] += t
+		out[sumSlowInT] += t * width / v
+		out[sumSlowOutT] += t * width / math.Sqrt(2*far/s.far.Mass)
+	}
+}
+
+// widest bounds the width to the far lead of what a gap hides, and returns the
+// largest |phi|^2 in it.
+func (q *quadrature) widest(g gap) (width, density float64) {
+	s, p := q.solver, q.spectrum
+	a, b := s.incidentWave(g.from.energy), s.incidentWave(g.to.energy)
+	density = math.Exp(p.logDensity(min(max(p.K0, min(a, b)), max(a, b))))
+	width = math.Abs(g.to.energy - g.from.energy)
+	if g.blind {
+		return width, density
+	}
+	var at Amplitudes
+	near := g.from.energy - s.near.Height
+	if s.at(level{g.from.energy, near, g.from.energy - s.far.Height}, &at) == nil && at.Dwell > 0 {
+		width = min(width, at.Transmission/at.Dwell)
+	}
+	return width, density
+}
+
+// incidentWave is the wave number in the incident lead.
+func (s *Solver) incidentWave(energy float64) float64 {
+	return math.Sqrt(2 * s.near.Mass * max(0, energy-s.near.Height))
 }

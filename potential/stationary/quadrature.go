@@ -31,7 +31,7 @@ type quadrature struct {
 	window     window
 	stretches  []*stretch
 	poles      []Pole
-	unresolved []probe
+	unresolved []gap
 	panels     []*panel  // in ascending k
 	rest       []float64 // bounds of what the panels do not see
 	used       int
@@ -102,10 +102,9 @@ func (q *quadrature) cuts(st *stretch) []float64 {
 func (q *quadrature) ladder() []float64 {
 	const ratio = 4.0
 	var ks, at, half []float64
-	m, v0 := q.solver.near.Mass, q.solver.near.Height
 	for _, p := range q.poles {
-		if k := math.Sqrt(2 * m * max(0, p.Energy-v0)); k > 0 {
-			at, half = append(at, k), append(half, p.Width/2*m/k)
+		if k := q.solver.incidentWave(p.Energy); k > 0 {
+			at, half = append(at, k), append(half, p.Width/2*q.solver.near.Mass/k)
 		}
 	}
 	for i, k := range at {

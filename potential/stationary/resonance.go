@@ -46,8 +46,16 @@ type hunt struct {
 	solver     *Solver
 	stretch    *stretch
 	probes     []probe
-	unresolved []probe // where two neighbouring numbers still differ by a jump
+	unresolved []gap
 	budget     int
+	limit      error // ErrEvaluations once the budget is spent
+}
+
+// gap is an interval in which a pole is hidden, or several. It is blind where
+// the search had to stop; else two numbers next to each other bound it.
+type gap struct {
+	from, to probe
+	blind    bool
 }
 
 // Bounds within which a phase step counts as accounted for: by the trapezoidal
@@ -81,18 +89,18 @@ func (h *hunt) between(ctx context.Context, a, b probe) error {
 		h.probes = append(h.probes, b)
 		return nil
 	}
-	if b.x-a.x <= 1e-15*b.x {
-		h.unresolved = append(h.unresolved, a)
-		h.probes = append(h.probes, b)
-		return nil
-	}
 	if err := ctx.Err(); err != nil {
 		return err
 	}
-	if h.budget--; h.budget < 0 {
-		h.unresolved = append(h.unresolved, a)
-		return ErrEvaluations
+	if h.budget <= 0 {
+		h.limit = ErrEvaluations
 	}
+	if b.x-a.x <= 1e-15*b.x || h.limit != nil {
+		h.unresolved = append(h.unresolved, gap{a, b, h.limit != nil})
+		h.probes = append(h.probes, b)
+		return nil
+	}
+	h.budget--
 	mid := h.solver.probe(h.stretch, a.x+(b.x-a.x)/2)
 	if err := h.between(ctx, a, mid); err != nil {
 		return err
