@@ -265,11 +265,7 @@ func plus(a, b Mean, f float64) Mean {
 }
 
 func (c closedForm) checkPole(t *testing.T, s *potential.Structure) {
-	var parts [2]json.RawMessage
-	if err := json.Unmarshal(c.Value, &parts); err != nil {
-		t.Fatal(err)
-	}
-	re, im := decimal(t, parts[0]), decimal(t, parts[1])
+	re, im := c.pole(t)
 	v := New(s, false)
 	z, ok := v.refine(complex(re+im/3, im*1.2))
 	if !ok {
@@ -278,4 +274,14 @@ func (c closedForm) checkPole(t *testing.T, s *potential.Structure) {
 	// Rounding of the energy against the width: in/in' is off by 1e-15 of it.
 	near(t, "energy", real(z), re, 0, 1e-14)
 	near(t, "half width", imag(z), im, 1e-15*re, 1e-11)
+}
+
+// pole is the value of a case that is one.
+func (c closedForm) pole(t *testing.T) (re, im float64) {
+	t.Helper()
+	var parts [2]json.RawMessage
+	if err := json.Unmarshal(c.Value, &parts); err != nil {
+		t.Fatal(err)
+	}
+	return decimal(t, parts[0]), decimal(t, parts[1])
 }

@@ -29,7 +29,7 @@ func (s *Solver) probe(st *stretch, x float64) probe {
 	return probe{
 		x: x, energy: l.energy,
 		phase:    -(s.wave.turn + cmplx.Phase(p.in*cmplx.Conj(s.wave.u()))),
-		slope:    -imag(logSlope) * k * dk / s.near.Mass,
+		slope:    -imag(logSlope) * k / s.near.Mass * st.sign * dk,
 		logSlope: logSlope,
 	}
 }

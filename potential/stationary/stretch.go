@@ -12,7 +12,7 @@ type stretch struct {
 	from, to float64
 }
 
-// at returns k and dk/dx.
+// at returns k and |dk/dx|.
 func (st *stretch) at(x float64) (k, slope float64) {
 	return st.origin + st.sign*x*x, 2 * x
 }
