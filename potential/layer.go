@@ -33,6 +33,30 @@ func (l Layer) check(i int) error {
 	return nil
 }
 
+// number is one field of a shape.
+type number struct {
+	field string
+	value float64
+}
+
+// finite refuses the first of the numbers that is not finite.
+func finite(index int, numbers ...number) error {
+	for _, n := range numbers {
+		if math.IsNaN(n.value) || math.IsInf(n.value, 0) {
+			return &LayerError{index, n.field, "must be a finite number"}
+		}
+	}
+	return nil
+}
+
+// positiveWidth refuses a width that is not a positive number.
+func positiveWidth(index int, width float64) error {
+	if !(width > 0) || math.IsInf(width, 0) {
+		return &LayerError{index, "width", "must be greater than zero and finite"}
+	}
+	return nil
+}
+
 // add appends one segment of constant mass.
 func (l Layer) add(s *Structure, index int, from, to float64, height Profile) {
 	s.Segments = append(s.Segments, Segment{

@@ -6,6 +6,9 @@ import "math"
 type Flat struct{ Height float64 }
 
 func (f Flat) lay(s *Structure, l Layer, i int, left, _ float64) (float64, error) {
+	if err := finite(i, number{"height", f.Height}); err != nil {
+		return 0, err
+	}
 	right, err := l.extent(i, left)
 	if err == nil {
 		l.add(s, i, left, right, Constant(f.Height))
@@ -17,6 +20,9 @@ func (f Flat) lay(s *Structure, l Layer, i int, left, _ float64) (float64, error
 type Ramp struct{ Height, HeightEnd float64 }
 
 func (r Ramp) lay(s *Structure, l Layer, i int, left, _ float64) (float64, error) {
+	if err := finite(i, number{"height", r.Height}, number{"height_end", r.HeightEnd}); err != nil {
+		return 0, err
+	}
 	right, err := l.extent(i, left)
 	if err == nil {
 		l.add(s, i, left, right, Line(left, r.Height, right, r.HeightEnd))
@@ -34,8 +40,9 @@ func (p Point) lay(s *Structure, l Layer, i int, left, _ float64) (float64, erro
 		return 0, &LayerError{i, "thickness", "a delta has none"}
 	case l.Loss != 0:
 		return 0, &LayerError{i, "loss", "a delta has none"}
-	case math.IsNaN(p.Strength) || math.IsInf(p.Strength, 0):
-		return 0, &LayerError{i, "strength", "must be a finite number"}
+	}
+	if err := finite(i, number{"strength", p.Strength}); err != nil {
+		return 0, err
 	}
 	s.Deltas = append(s.Deltas, Delta{X: left, Strength: p.Strength, Layer: i})
 	return left, nil
@@ -45,8 +52,11 @@ func (p Point) lay(s *Structure, l Layer, i int, left, _ float64) (float64, erro
 type Hump struct{ Height, Width float64 }
 
 func (h Hump) lay(s *Structure, l Layer, i int, left, cut float64) (float64, error) {
-	if !(h.Width > 0) {
-		return 0, &LayerError{i, "width", "must be greater than zero"}
+	if err := positiveWidth(i, h.Width); err != nil {
+		return 0, err
+	}
+	if err := finite(i, number{"height", h.Height}); err != nil {
+		return 0, err
 	}
 	half := h.Width / 2 * math.Log(4*math.Abs(h.Height)/cut)
 	right, c, err := l.window(i, left, half)
@@ -60,8 +70,11 @@ func (h Hump) lay(s *Structure, l Layer, i int, left, cut float64) (float64, err
 type Bell struct{ Height, Width float64 }
 
 func (b Bell) lay(s *Structure, l Layer, i int, left, cut float64) (float64, error) {
-	if !(b.Width > 0) {
-		return 0, &LayerError{i, "width", "must be greater than zero"}
+	if err := positiveWidth(i, b.Width); err != nil {
+		return 0, err
+	}
+	if err := finite(i, number{"height", b.Height}); err != nil {
+		return 0, err
 	}
 	half := b.Width * math.Sqrt(2*math.Log(math.Abs(b.Height)/cut))
 	right, c, err := l.window(i, left, half)
@@ -76,8 +89,11 @@ func (b Bell) lay(s *Structure, l Layer, i int, left, cut float64) (float64, err
 type Rise struct{ Height, HeightEnd, Width float64 }
 
 func (r Rise) lay(s *Structure, l Layer, i int, left, cut float64) (float64, error) {
-	if !(r.Width > 0) {
-		return 0, &LayerError{i, "width", "must be greater than zero"}
+	if err := positiveWidth(i, r.Width); err != nil {
+		return 0, err
+	}
+	if err := finite(i, number{"height", r.Height}, number{"height_end", r.HeightEnd}); err != nil {
+		return 0, err
 	}
 	half := r.Width * math.Log(math.Abs(r.HeightEnd-r.Height)/cut)
 	right, c, err := l.window(i, left, half)

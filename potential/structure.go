@@ -75,6 +75,9 @@ func Build(entry, exit Lead, layers []Layer, opt Options) (*Structure, error) {
 			return nil, fmt.Errorf("%s: height must be a finite number", lead.name)
 		}
 	}
+	if math.IsNaN(opt.Drop) || math.IsInf(opt.Drop, 0) {
+		return nil, fmt.Errorf("bias: drop must be a finite number")
+	}
 	s := &Structure{Entry: entry, Exit: exit, Layers: make([]Span, 0, len(layers))}
 	x := 0.0
 	for i, layer := range layers {
