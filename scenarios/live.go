@@ -27,8 +27,9 @@ type Live struct {
 	profile profile
 }
 
-// The clock is made so that a run lasts about this many ticks, but for runs
-// of more steps, and for grids so large that a tick would cost too much.
+// The clock is made so that what there is to see lasts about this many ticks,
+// or as many as there are steps, if these are more, or if the grid is so large
+// that a tick would cost too much.
 const (
 	ticksPerRun  = 1440
 	ticksPerStep = 48
@@ -55,7 +56,7 @@ func NewLive(t *Trial) (*Live, error) {
 // refine makes the stepper of shorter step, where there is to be one.
 func (l *Live) refine() error {
 	p := l.Trial.Plan
-	steps := math.Max(1, p.Expected/p.TimeStep)
+	steps := math.Max(1, l.Outlook.Event/l.Trial.Scenario.Scale.Time/p.TimeStep)
 	if p.Mesh.Nodes() <= finestNodes {
 		l.ticks = int(math.Min(ticksPerStep, math.Max(1, math.Round(ticksPerRun/steps))))
 	}
@@ -180,21 +181,22 @@ func (l *Live) TickTime() float64 {
 }
 
 // Expected is the tick at which the run is expected to end.
-func (l *Live) Expected() int {
-	if l.Trial.Plan == nil {
-		return 0
+func (l *Live) Expected() int { return l.tickAt(l.Outlook.Duration) }
+
+// Event is the tick at which what can be seen is over.
+func (l *Live) Event() int { return l.tickAt(l.Outlook.Event) }
+
+// tickAt is the last tick up to a time in display units.
+func (l *Live) tickAt(time float64) int {
+	if tick := l.TickTime(); tick > 0 {
+		return int(math.Min(time/tick, math.MaxInt32))
 	}
-	return int(math.Ceil(l.Trial.Plan.Expected / l.Trial.Plan.TimeStep * float64(l.ticks)))
+	return 0
 }
 
 // Contact is the tick of the first contact: when the front of the free
 // packet, two standard deviations before its centre, reaches the structure.
-func (l *Live) Contact() int {
-	if tick := l.TickTime(); tick > 0 {
-		return int(l.Outlook.Contact / tick)
-	}
-	return 0
-}
+func (l *Live) Contact() int { return l.tickAt(l.Outlook.Contact) }
 
 // Kept is the number of moments kept for going back, and the memory they
 // take. It is at most MostKept and MostKeptBytes (or four moments).

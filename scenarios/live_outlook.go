@@ -22,7 +22,9 @@ type Outlook struct {
 	Planes    *PlanesAt
 	From, To  float64 // ends of the grid's real axis
 	Fringe    float64 // distance of the interference fringes before the structure
-	Duration  float64 // expected end of the run
+	Duration  float64 // expected end of the run, when next to nothing is left
+	Event     float64 // when what can be seen with the eye is over; at most Duration
+	Top       float64 // largest density at the start
 	Contact   float64 // time of the first contact
 	Predicted Ledger  // averages; Trapped and Closure are 0
 	Arrivals  Arrivals
@@ -38,6 +40,9 @@ type Arrivals struct {
 	// the packet's lead went on for ever; FreeReflected its mean time at the
 	// near plane after a hard wall at the near face.
 	FreeTransmitted, FreeReflected *float64
+	// Peak flow to be expected at the planes, probability per time: that of
+	// the free packet at that time, times the part that arrives.
+	PeakTransmitted, PeakReflected float64
 }
 
 func newOutlook(t *Trial) *Outlook {
@@ -74,6 +79,8 @@ func (t *Trial) schedule(o *Outlook) {
 	x := p.extent()
 	o.From, o.To = x.Left*unit.Length, x.Right*unit.Length
 	o.Duration = p.Expected * unit.Time
+	o.Event = t.event() * unit.Time
+	o.Top = 1 / (math.Sqrt(2*math.Pi) * t.Scenario.Packet.Length * unit.Length)
 	o.Contact = t.contact() * unit.Time
 	o.Shifts = t.shifts()
 	transmitted, reflected := t.averageArrivals()
@@ -88,7 +95,17 @@ func (t *Trial) schedule(o *Outlook) {
 		Transmitted: show(a.Transmitted, transmitted), Reflected: show(a.Reflected, reflected),
 		FreeTransmitted: scaled((p.start+p.width+p.far)*free, unit.Time),
 		FreeReflected:   scaled((p.start+p.near)*free, unit.Time),
+		PeakTransmitted: a.Transmitted.Value * t.freePeak(transmitted.Value) / unit.Time,
+		PeakReflected:   a.Reflected.Value * t.freePeak(reflected.Value) / unit.Time,
 	}
+}
+
+// freePeak is the largest flow of the free packet past a point that its
+// centre passes at a time: speed times density at the centre.
+func (t *Trial) freePeak(time float64) float64 {
+	near, _ := t.Scenario.leads()
+	_, width := t.freeAt(time)
+	return t.Scenario.Packet.K0 / near.Mass / (math.Sqrt(2*math.Pi) * width)
 }
 
 // energySpread is the standard deviation of the packet's energy to first
@@ -128,3 +145,31 @@ func (t *Trial) contact() float64 {
 	}
 	return high
 }
+
+// event is when what can be seen is over: four standard deviations of the
+// arrival times after the later mean arrival. The variance is that of the
+// arrivals over the spectrum and of the packet's passage length/v0.
+func (t *Trial) event() float64 {
+	end := 0.0
+	near, _ := t.Scenario.leads()
+	passage := t.Scenario.Packet.Length * near.Mass / t.Scenario.Packet.K0
+	for _, share := range []func(sample) (weight, arrival float64){
+		func(s sample) (float64, float64) { a, _ := s.arrivals(t.Plan.geometry); return s.Transmission, a },
+		func(s sample) (float64, float64) { _, a := s.arrivals(t.Plan.geometry); return s.Reflection, a },
+	} {
+		var sum, first, second float64
+		for _, s := range t.Plan.samples {
+			w, a := share(s)
+			w *= s.weight
+			sum, first, second = sum+w, first+w*a, second+w*a*a
+		}
+		if sum > seen {
+			mean := first / sum
+			end = math.Max(end, mean+4*math.Sqrt(math.Max(0, second/sum-mean*mean)+passage*passage))
+		}
+	}
+	return math.Min(end, t.Plan.Expected)
+}
+
+// seen is the smallest probability that is worth waiting for.
+const seen = 1e-3

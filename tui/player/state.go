@@ -147,8 +147,13 @@ const (
 	fastest = 10
 )
 
-// secondsPerRun is how long a run lasts at the normal pace.
-const secondsPerRun = 24
+// secondsPerRun is how long what can be seen of a run lasts at the normal
+// pace. What comes after it, until next to nothing is left, passes in
+// secondsPerTail at any slower pace.
+const (
+	secondsPerRun  = 24
+	secondsPerTail = 4
+)
 
 func (s *state) faster(n int) {
 	s.pace = max(slowest, min(fastest, s.pace+n))
@@ -195,9 +200,18 @@ func (s *state) advance(now time.Time) {
 	}
 }
 
+// ticksPerSecond is the present speed of the clock.
 func (s *state) ticksPerSecond() float64 {
-	return math.Ldexp(float64(s.live.Expected())/secondsPerRun, s.pace)
+	chosen := math.Ldexp(float64(s.live.Event())/secondsPerRun, s.pace)
+	if s.tail() {
+		return math.Max(chosen, float64(s.live.Expected()-s.live.Event())/secondsPerTail)
+	}
+	return chosen
 }
+
+// tail reports whether there is nothing more to see, although the run is not
+// over.
+func (s *state) tail() bool { return s.live.Now() > s.live.Event() && !s.live.Ended() }
 
 // publish posts a frame if anything is new.
 func (s *state) publish() {
@@ -210,6 +224,7 @@ func (s *state) publish() {
 		Pace: math.Ldexp(1, s.pace), Err: s.err,
 	}
 	if s.live != nil {
+		f.Tail = s.tail()
 		f.Moment, f.Outlook, f.Tick = s.live.Moment(s.window), s.live.Outlook, s.live.TickTime()
 	}
 	s.mail.post(f)

@@ -1,0 +1,173 @@
+package tui
+
+import (
+	"fmt"
+	"math"
+
+	"fluxtoll/scenarios"
+	"fluxtoll/tui/canvas"
+)
+
+// arrivals draws the flux through both planes against time, the far plane
+// above, with the predicted mean arrival and free flight marked.
+type arrivals struct {
+	canvas.Box
+	moment  *scenarios.Moment
+	outlook *scenarios.Outlook
+	log     bool
+}
+
+// lane is one plane's part of the panel.
+type lane struct {
+	canvas.Box
+	name            string
+	flux            []float64
+	style           canvas.Style
+	predicted, free *float64
+	mean            *float64
+	top             float64
+}
+
+func (a arrivals) draw() {
+	far, near := a.lanes()
+	if a.High < 4 {
+		far.Box = a.Inside(0, 0, a.Wide, a.High)
+		a.lane(far)
+		return
+	}
+	rows := a.High - 1
+	far.Box = a.Inside(0, 0, a.Wide, rows-rows/2)
+	near.Box = a.Inside(0, rows-rows/2, a.Wide, rows/2)
+	a.lane(far)
+	a.lane(near)
+	a.axis(a.Inside(0, rows, a.Wide, 1))
+}
+
+func (a arrivals) lanes() (far, near lane) {
+	p := a.outlook.Arrivals
+	far = lane{name: "far", flux: a.moment.Far, style: canvas.Right, predicted: p.Transmitted, free: p.FreeTransmitted,
+		mean: a.measured("arrival_transmitted"), top: p.PeakTransmitted}
+	near = lane{name: "near", flux: a.moment.Near, style: canvas.Left, predicted: p.Reflected, free: p.FreeReflected,
+		mean: a.measured("arrival_reflected"), top: p.PeakReflected}
+	if a.outlook.Side == scenarios.FromRight {
+		far.style, near.style = near.style, far.style
+	}
+	return far, near
+}
+
+// measured is a quantity of the packet column.
+func (a arrivals) measured(name string) *float64 {
+	for _, q := range a.moment.Result.Quantities {
+		if q.Name == name {
+			return q.Packet
+		}
+	}
+	return nil
+}
+
+// end is the end of the time axis: when what can be seen is over, or, on a
+// logarithmic scale, the present.
+func (a arrivals) end() float64 {
+	if a.log {
+		return math.Max(a.outlook.Event, a.moment.Time)
+	}
+	return a.outlook.Event
+}
+
+// now is the number of bins up to the present.
+func (a arrivals) now(flux []float64) int {
+	if a.moment.BinTime <= 0 {
+		return 0
+	}
+	return min(len(flux), int(math.Ceil(a.moment.Time/a.moment.BinTime-1e-9)))
+}
+
+func (a arrivals) lane(l lane) {
+	head := l.Inside(0, 0, l.Wide, 1)
+	if l.High > 1 {
+		l.Box = l.Inside(0, 1, l.Wide, l.High-1)
+	}
+	l.Plot()
+	wide, high := l.Dots()
+	known := a.now(l.flux)
+	s := scale{top: l.top, log: a.log}
+	for _, v := range l.flux {
+		s.top = math.Max(s.top, v)
+	}
+	if s.top <= 0 {
+		s.top = 1
+	}
+	a.mark(l, l.free, 4)
+	for x := range wide {
+		from, to := a.bins(x, wide)
+		level := 0
+		for i := from; i < min(to, known); i++ {
+			level = max(level, int(math.Round(s.part(l.flux[i])*float64(high))))
+		}
+		l.Fill(x, level, l.style)
+	}
+	a.mark(l, l.predicted, 1)
+	l.Box = head
+	a.caption(l)
+}
+
+// bins is the range of bins in a column of dots, at least one.
+func (a arrivals) bins(x, wide int) (from, to int) {
+	if a.moment.BinTime <= 0 {
+		return 0, 0
+	}
+	perDot := a.end() / a.moment.BinTime / float64(wide)
+	from = int(float64(x) * perDot)
+	return from, max(from+1, int(float64(x+1)*perDot))
+}
+
+// mark draws a vertical line of every n-th dot at a time.
+func (a arrivals) mark(l lane, t *float64, n int) {
+	if t == nil || a.end() <= 0 {
+		return
+	}
+	wide, high := l.Dots()
+	x := int(*t / a.end() * float64(wide))
+	for y := 0; y < high; y += n {
+		l.Invert(x, y, canvas.Strong)
+	}
+}
+
+// caption names the plane, the mean arrival so far and the predicted one.
+func (a arrivals) caption(l lane) {
+	if l.predicted == nil {
+		l.Text(0, 0, canvas.Faint, cut(l.name+": nothing expected", l.Wide))
+		return
+	}
+	f := timeFormat(a.end(), 8)
+	f.decimals = min(f.decimals, 2)
+	x := l.Text(0, 0, l.style, l.name)
+	mean := missing
+	if l.mean != nil && a.now(l.flux) > 0 && *l.mean > 0 && *l.mean <= a.end() {
+		mean = f.text(*l.mean)
+	}
+	text := fmt.Sprintf(" mean %s of %s", pad(mean, len(f.text(*l.predicted))), withUnit(f.text(*l.predicted), a.outlook.Units.Time))
+	x = l.Text(x, 0, canvas.Faint, cut(text, l.Wide-x))
+	if l.free != nil {
+		if text := ", free flight " + f.text(*l.free); x+len(text) <= l.Wide {
+			l.Text(x, 0, canvas.Faint, text)
+		}
+	}
+}
+
+// axis numbers the times.
+func (a arrivals) axis(b canvas.Box) {
+	marks, f := ticks(0, a.end(), b.Wide/10)
+	unit := a.outlook.Units.Time
+	b.TextRight(b.Wide, 0, canvas.Faint, unit)
+	for _, t := range marks {
+		text := f.text(t)
+		c := int(t/a.end()*float64(b.Wide)) - len(text)/2
+		if t == 0 {
+			c = 0
+		}
+		if c+len(text) < b.Wide-len(unit) {
+			b.Text(c, 0, canvas.Faint, text)
+		}
+	}
+}
