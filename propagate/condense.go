@@ -9,12 +9,26 @@ type condensed struct{ ll, lr, rr complex128 }
 //	A_ff - A_fi inv(A_ii) A_if.
 func (c *cell) condense(alpha, beta complex128) condensed {
 	a, b := c.shift(alpha, beta)
-	out := c.bare(a, b)
+	out, inverse := c.bare(a, b), newResolvent(a, b)
+	if c.mirror {
+		even := -a * a * c.joined(inverse, 0, c.even)
+		odd := -a * a * c.joined(inverse, c.even, len(c.lambda))
+		return condensed{out.ll + even + odd, out.lr + even - odd, out.rr + even + odd}
+	}
 	for j, lambda := range c.lambda {
-		f := -a * a * resolvent(a, lambda, b)
-		out.add(f, c.couple[0][j], c.couple[1][j])
+		out.add(-a*a*inverse.at(lambda), c.couple[0][j], c.couple[1][j])
 	}
 	return out
+}
+
+// joined is the sum over the modes from..to-1 of couple_0j^2/(a lambda_j + b).
+func (c *cell) joined(inverse resolvent, from, to int) complex128 {
+	couple, total := c.couple[0][from:to], complex(0, 0)
+	for j, lambda := range c.lambda[from:to] {
+		g, l := inverse.at(lambda), couple[j]
+		total += complex(real(g)*l*l, imag(g)*l*l)
+	}
+	return total
 }
 
 // bare is the faces' own part of a*stiff + b*mass.
@@ -38,9 +52,9 @@ type view struct{ matrix, bilinear, hermitian condensed }
 func (c *cell) view(energy complex128) view {
 	a, b := c.shift(1, energy)
 	faces := condensed{ll: complex(c.mass[0], 0), rr: complex(c.mass[c.order], 0)}
-	v := view{matrix: c.bare(a, b), bilinear: faces, hermitian: faces}
+	v, inverse := view{matrix: c.bare(a, b), bilinear: faces, hermitian: faces}, newResolvent(a, b)
 	for j, lambda := range c.lambda {
-		g := a * resolvent(a, lambda, b)
+		g := a * inverse.at(lambda)
 		l, r := c.couple[0][j], c.couple[1][j]
 		v.matrix.add(-a*g, l, r)
 		v.bilinear.add(g*g, l, r)
@@ -57,11 +71,21 @@ func (c *cell) view(energy complex128) view {
 // the rounding unit the shift costs no more than the rounding it avoids.
 const nearPole = 1.5e-8
 
-// resolvent is 1/(a lambda + b), kept away from a pole on the real axis.
-func resolvent(a complex128, lambda float64, b complex128) complex128 {
-	d := complex(real(a)*lambda, imag(a)*lambda) + b
-	if least := nearPole * nearPole * square(b); square(d) < least {
-		d += complex(nearPole, 0) * b
+// resolvent is the function 1/(a lambda + b), kept away from a pole on the
+// real axis.
+type resolvent struct {
+	a, b  complex128
+	least float64 // square of the smallest denominator
+}
+
+func newResolvent(a, b complex128) resolvent {
+	return resolvent{a, b, nearPole * nearPole * square(b)}
+}
+
+func (r resolvent) at(lambda float64) complex128 {
+	d := complex(real(r.a)*lambda+real(r.b), imag(r.a)*lambda+imag(r.b))
+	if square(d) < r.least {
+		d += complex(nearPole, 0) * r.b
 	}
 	return reciprocal(d)
 }

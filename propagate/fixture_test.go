@@ -17,6 +17,7 @@ type setup struct {
 	low, high   float64 // band of energies resolved
 	order       int
 	phase       float64
+	height      float64 // tolerance on V in an element
 	edge        Edge
 	extent      Extent
 	pade        int
@@ -30,7 +31,7 @@ func stepSetup() setup {
 	return setup{
 		entry: potential.Lead{Mass: 1}, exit: potential.Lead{Height: 1, Mass: 1},
 		packet: Packet{Centre: -40, Length: 5, K0: 2},
-		low:    0.5, high: 5, order: 16, phase: 9,
+		low:    0.5, high: 5, order: 16, phase: 9, height: 1e-11,
 		edge:   Edge{Count: 12, First: 1.5, Growth: 1.5, Angle: EdgeAngle},
 		extent: Extent{Left: -90, PlaneLeft: -90, PlaneRight: 15, Right: 15},
 		pade:   5, dt: 0.5, origin: 2,
@@ -92,7 +93,7 @@ func (s setup) structure(t testing.TB) *potential.Structure {
 
 func (s setup) mesh(t testing.TB) *Mesh {
 	t.Helper()
-	r := Resolution{Order: s.order, Phase: s.phase, Low: s.low, High: s.high, Height: 1e-11, MaxNodes: 200000}
+	r := Resolution{Order: s.order, Phase: s.phase, Low: s.low, High: s.high, Height: s.height, MaxNodes: 200000}
 	layout, err := NewLayout(s.structure(t), r, s.extent, s.edge, s.edge)
 	if err != nil {
 		t.Fatal(err)

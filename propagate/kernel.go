@@ -45,7 +45,7 @@ func newKernel(c *cell, alpha, beta complex128, gain float64, mirror bool) kerne
 	}
 	a, b := c.shift(alpha, beta)
 	for j, lambda := range c.lambda {
-		g := 1 / (a*complex(lambda, 0) + b)
+		g := reciprocal(a*complex(lambda, 0) + b)
 		k.turn[j] = 1 + complex(gain, 0)*c.mu*g
 		k.left[j] = a * g * complex(c.couple[0][j], 0)
 		if k.right != nil {

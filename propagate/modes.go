@@ -20,34 +20,35 @@ func (p *pencil) diagonalise() {
 		p.addModes(folding(n, -1))
 		return
 	}
-	whole := make([][]float64, n)
+	whole := make([]base, n)
 	for i := range whole {
-		whole[i] = make([]float64, n)
-		whole[i][i] = 1
+		whole[i] = base{{i, 1}}
 	}
 	p.addModes(whole)
 }
 
+// base is a vector over the interior by its few entries that are not zero.
+type base []struct {
+	at    int
+	value float64
+}
+
 // folding lists an orthonormal basis of the vectors of length n that are even
 // (parity 1) or odd (parity -1) under reversal.
-func folding(n int, parity float64) [][]float64 {
-	var basis [][]float64
+func folding(n int, parity float64) []base {
+	var basis []base
 	for i := range n / 2 {
-		v := make([]float64, n)
-		v[i], v[n-1-i] = math.Sqrt2/2, parity*math.Sqrt2/2
-		basis = append(basis, v)
+		basis = append(basis, base{{i, math.Sqrt2 / 2}, {n - 1 - i, parity * math.Sqrt2 / 2}})
 	}
 	if n%2 == 1 && parity > 0 {
-		v := make([]float64, n)
-		v[n/2] = 1
-		basis = append(basis, v)
+		basis = append(basis, base{{n / 2, 1}})
 	}
 	return basis
 }
 
 // addModes appends the modes within the span of an orthonormal basis that the
 // eigenproblem does not leave.
-func (p *pencil) addModes(basis [][]float64) {
+func (p *pencil) addModes(basis []base) {
 	n := len(basis)
 	if n == 0 {
 		return
@@ -68,8 +69,8 @@ func (p *pencil) addModes(basis [][]float64) {
 	for j := range n {
 		v := make([]float64, p.order-1)
 		for b, base := range basis {
-			for i, x := range base {
-				v[i] += vectors.At(b, j) * x / math.Sqrt(p.mass[i+1])
+			for _, x := range base {
+				v[x.at] += vectors.At(b, j) * x.value / math.Sqrt(p.mass[x.at+1])
 			}
 		}
 		p.addMode(v)
@@ -77,17 +78,13 @@ func (p *pencil) addModes(basis [][]float64) {
 }
 
 // between is a^T mass^(-1/2) stiff mass^(-1/2) b over the interior.
-func (p *pencil) between(a, b []float64) float64 {
+func (p *pencil) between(a, b base) float64 {
 	total := 0.0
-	for i, x := range a {
-		if x == 0 {
-			continue
+	for _, x := range a {
+		for _, y := range b {
+			i, j := x.at+1, y.at+1
+			total += x.value * y.value * p.stiff[i][j] / math.Sqrt(p.mass[i]*p.mass[j])
 		}
-		row := 0.0
-		for j, y := range b {
-			row += p.stiff[i+1][j+1] / math.Sqrt(p.mass[i+1]*p.mass[j+1]) * y
-		}
-		total += x * row
 	}
 	return total
 }
