@@ -129,7 +129,7 @@ func (s *Solver) resolve(l level, a *Amplitudes) {
 		a.Transmission = math.Exp(a.LogTransmission)
 		phase := p.in * complex(w.er, w.ei)
 		a.T = cmplx.Conj(phase) * complex(math.Sqrt(a.Transmission)/cmplx.Abs(phase), 0)
-		a.GroupDelayTransmitted = -imag(p.inLog) - p.shift
+		a.GroupDelayTransmitted = 0 - imag(p.inLog) - p.shift
 	}
 	a.Reflection = p.outSquare / p.inSquare
 	a.R = p.out / p.in

@@ -155,7 +155,7 @@ func (q *quadrature) averages() (*Averages, error) {
 		GroupDelayReflected: t.ratio(sumDelayR, sumR),
 		SlownessInReflected: t.ratio(sumSlowR, sumR),
 		SlownessFree:        t.ratio(sumSlow, sumOne),
-		Evaluations:         q.used, Resonances: q.poles, Unresolved: len(q.unresolved),
+		Evaluations:         q.used, Resonances: q.poles,
 		LogTransmitted: math.Inf(-1),
 	}
 	if peak := q.window.peak; !math.IsInf(peak, -1) && t.value[sumT] > 0 {
@@ -167,6 +167,9 @@ func (q *quadrature) averages() (*Averages, error) {
 		a.SlownessOutTransmitted = t.ratio(sumSlowOutT, sumT)
 	}
 	q.fillLayers(a)
+	for _, g := range q.unresolved {
+		a.Unresolved += g.hidden()
+	}
 	for _, p := range q.panels {
 		a.Nodes = append(a.Nodes, p.nodes...)
 	}

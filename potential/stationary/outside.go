@@ -79,8 +79,7 @@ func (q *quadrature) hidden(g gap, out []float64) {
 	if !(near > 0) || density == 0 {
 		return
 	}
-	jumps := max(1, math.Round(math.Abs(g.to.phase-g.from.phase)/math.Pi))
-	n := 2 * math.Pi * jumps * density / v
+	n := 2 * math.Pi * float64(g.hidden()) * density / v
 	out[sumR] += n * width
 	out[sumSlowR] += n * width / v
 	out[sumDelayR] += n

@@ -124,14 +124,15 @@ func (r *rule) node(p *panel, x, weight float64, row []float64, node *Node) erro
 		return err
 	}
 	k, dk := p.stretch.at(x)
-	logDensity := r.quadrature.spectrum.logDensity(k)
+	spectrum := r.quadrature.spectrum
+	logDensity := spectrum.logDensity(k)
 	g := dk * math.Exp(logDensity)
 	t := 0.0
 	if a.SpeedOut > 0 {
 		t = dk * math.Exp(logDensity+a.LogTransmission-r.quadrature.window.peak)
 	}
 	integrands(row, a, g, t)
-	p.noise.add(a, weight*g, weight*t, s.scale(a.Energy))
+	p.noise.add(a, weight*g, weight*t, s.scale(a.Energy), k*math.Abs(k-spectrum.K0)/(spectrum.Width*spectrum.Width))
 	*node = Node{K: k, Weight: weight * g, Amplitudes: *a}
 	node.Amplitudes.LayerDwell, node.Amplitudes.LayerLoss = nil, nil
 	return nil

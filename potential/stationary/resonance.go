@@ -2,6 +2,7 @@ package stationary
 
 import (
 	"context"
+	"fmt"
 	"math"
 	"math/cmplx"
 	"slices"
@@ -9,6 +10,33 @@ import (
 
 // Pole is a pole of t and r at the energy Energy - i Width/2.
 type Pole struct{ Energy, Width float64 }
+
+// Resonances returns the poles with energies between from and to, both above
+// the incident lead's height, as far as a real energy of the window can feel
+// them: a pole much wider than its distance to the lead's height, or hidden
+// behind another, may be missing. Unresolved counts those that are known to be
+// there by the phase of t but too narrow for double precision. Beyond budget
+// energies it gives up with what it has and ErrEvaluations.
+func (s *Solver) Resonances(ctx context.Context, from, to float64, budget int) (poles []Pole, unresolved int, err error) {
+	if !(from > s.near.Height && to > from) || math.IsInf(to, 0) {
+		return nil, 0, fmt.Errorf("stationary: the window from %g to %g must lie above the incident lead's height %g", from, to, s.near.Height)
+	}
+	widest := func(energy float64) float64 { return max(energy-s.near.Height, to-from) }
+	for _, st := range s.stretches(s.incidentWave(from), s.incidentWave(to)) {
+		h := hunt{solver: s, stretch: st, budget: budget}
+		if err := h.search(ctx, 8); err != nil {
+			return nil, 0, err
+		}
+		if h.limit != nil {
+			err = h.limit
+		}
+		for _, g := range h.unresolved {
+			unresolved += g.hidden()
+		}
+		poles = append(poles, h.poles(widest)...)
+	}
+	return distinct(poles), unresolved, err
+}
 
 // probe is what the search for resonances knows at one energy: the phase of
 // t (of sqrt r where the far lead is closed), through whole turns, and its
@@ -56,6 +84,11 @@ type hunt struct {
 type gap struct {
 	from, to probe
 	blind    bool
+}
+
+// hidden is the number of poles a gap hides, by the half turns of the phase.
+func (g gap) hidden() int {
+	return max(1, int(math.Round(math.Abs(g.to.phase-g.from.phase)/math.Pi)))
 }
 
 // Bounds within which a phase step counts as accounted for: by the trapezoidal

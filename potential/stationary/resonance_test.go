@@ -2,27 +2,22 @@ package stationary
 
 import (
 	"context"
+	"errors"
 	"math"
 	"testing"
 
 	"fluxtoll/potential"
 )
 
-// resonances hunts between two wave numbers.
-func resonances(tb testing.TB, s *potential.Structure, lo, hi float64) ([]Pole, []gap) {
+// resonances hunts between two wave numbers of a lead of height 0.
+func resonances(tb testing.TB, s *potential.Structure, lo, hi float64) (poles []Pole, hidden int) {
 	tb.Helper()
-	v := New(s, false)
-	var poles []Pole
-	var gaps []gap
-	for _, st := range v.stretches(lo, hi) {
-		h := hunt{solver: v, stretch: st, budget: 100000}
-		if err := h.search(context.Background(), 8); err != nil {
-			tb.Fatal(err)
-		}
-		poles = append(poles, h.poles(func(float64) float64 { return math.Inf(1) })...)
-		gaps = append(gaps, h.unresolved...)
+	energy := func(k float64) float64 { return k * k / (2 * s.Entry.Mass) }
+	poles, hidden, err := New(s, false).Resonances(context.Background(), energy(lo), energy(hi), 100000)
+	if err != nil {
+		tb.Fatal(err)
 	}
-	return distinct(poles), gaps
+	return poles, hidden
 }
 
 // TestHuntFindsPublishedPoles: the poles of testdata/closed_forms.json, found
@@ -62,13 +57,13 @@ func TestHuntCountsLevelsOfABox(t *testing.T) {
 		const height, w = 200.0, 10.0
 		s := build(t, plain, plain, flatOf(wall, height), flatOf(w, 0), flatOf(wall, height))
 		top := 20.5 * math.Pi / w
-		poles, gaps := resonances(t, s, 0.5*math.Pi/w, top)
-		if n := len(poles) + len(gaps); n < 20 || len(poles) > 21 {
-			t.Errorf("walls of %g: %d poles and %d gaps for 20 levels", wall, len(poles), len(gaps))
+		poles, hidden := resonances(t, s, 0.5*math.Pi/w, top)
+		if n := len(poles) + hidden; n < 20 || len(poles) > 21 {
+			t.Errorf("walls of %g: %d poles and %d hidden for 20 levels", wall, len(poles), hidden)
 		}
 		// A wall of height V leaves the wave 1/kappa deep: w + 2/kappa.
 		for i, p := range poles[:min(5, len(poles))] {
-			if len(gaps) > 0 || wall < 0.3 {
+			if hidden > 0 || wall < 0.3 {
 				break // thin walls let the levels sink
 			}
 			n := float64(i + 1)
@@ -85,14 +80,29 @@ func TestHuntAmongCoupledBoxes(t *testing.T) {
 		for range 10 {
 			layers = append(layers, flatOf(3, 0), flatOf(b, 4))
 		}
-		poles, gaps := resonances(t, build(t, plain, plain, layers...), 0.6, 1.1)
-		hidden := 0.0
-		for _, g := range gaps {
-			hidden += math.Round(math.Abs(g.to.phase-g.from.phase) / math.Pi)
+		poles, hidden := resonances(t, build(t, plain, plain, layers...), 0.6, 1.1)
+		if len(poles)+hidden != 10 {
+			t.Errorf("walls of %g: %d poles, %d hidden, want 10 in all", b, len(poles), hidden)
 		}
-		if len(poles)+int(hidden) != 10 {
-			t.Errorf("walls of %g: %d poles, %g hidden, want 10 in all", b, len(poles), hidden)
+	}
+}
+
+// TestResonancesRefuses: windows that make no sense, and a budget that is too
+// small.
+func TestResonancesRefuses(t *testing.T) {
+	v := New(twin(t, 3, 3), false)
+	for _, w := range [][2]float64{{0, 1}, {-1, 1}, {1, 1}, {2, 1}, {1, math.Inf(1)}, {math.NaN(), 1}, {1, math.NaN()}} {
+		if _, _, err := v.Resonances(context.Background(), w[0], w[1], 1000); err == nil {
+			t.Errorf("window %v: no error", w)
 		}
+	}
+	if _, _, err := v.Resonances(context.Background(), 0.1, 1, 3); !errors.Is(err, ErrEvaluations) {
+		t.Errorf("error %v", err)
+	}
+	ctx, cancel := context.WithCancel(context.Background())
+	cancel()
+	if _, _, err := v.Resonances(ctx, 0.1, 1, 1000); !errors.Is(err, context.Canceled) {
+		t.Errorf("cancelled: %v", err)
 	}
 }
 

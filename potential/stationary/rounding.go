@@ -16,34 +16,37 @@ type rounding struct {
 func (s *Solver) scale(energy float64) float64 { return max(energy-s.low, s.high-energy) }
 
 // add adds the share of one node, g and t its weights times |phi|^2 and
-// |phi|^2 T, scale the energy whose rounding is felt.
-func (r *rounding) add(a *Amplitudes, g, t, scale float64) {
+// |phi|^2 T, scale the energy whose rounding is felt, place the relative
+// change of |phi|^2 when k is off by a rounding.
+func (r *rounding) add(a *Amplitudes, g, t, scale, place float64) {
 	const eps = 0x1p-52
 	const few = 4 * eps
-	r.share(a, g, t, few, func(j int, x float64) { r.steady[j] += x })
+	r.share(a, g, t, few, eps, func(j int, x float64) { r.steady[j] += x })
 	nu := eps * scale * a.sharpness
-	r.share(a, g, t, nu, func(j int, x float64) { r.jitter[j] += x * x })
+	r.share(a, g, t, nu, eps*place, func(j int, x float64) { r.jitter[j] += x * x })
 	r.layerSteady = 2 * few
-	r.layerSq = max(r.layerSq, 4*nu*nu)
+	layer := 2*nu + eps*place
+	r.layerSq = max(r.layerSq, layer*layer)
 }
 
-// share passes on what a relative error nu of the amplitudes does to each
-// integrand.
-func (r *rounding) share(a *Amplitudes, g, t, nu float64, to func(int, float64)) {
-	root := nu * (math.Sqrt(a.Reflection) + nu)
-	to(sumOne, 0x1p-52*g)
-	to(sumSlow, 0x1p-52*g/a.SpeedIn)
+// share passes on what a relative error nu of the amplitudes and one of weight
+// of |phi|^2 do to each integrand.
+func (r *rounding) share(a *Amplitudes, g, t, nu, weight float64, to func(int, float64)) {
+	reflected := g * (2*nu*(math.Sqrt(a.Reflection)+nu) + weight*a.Reflection)
+	to(sumOne, weight*g)
+	to(sumSlow, weight*g/a.SpeedIn)
 	if t > 0 {
-		to(sumT, 2*nu*t)
-		to(sumDelayT, 3*nu*t*a.sharpness)
-		to(sumSlowInT, 2*nu*t/a.SpeedIn)
-		to(sumSlowOutT, 2*nu*t/a.SpeedOut)
+		transmitted := t * (2*nu + weight)
+		to(sumT, transmitted)
+		to(sumDelayT, 1.5*transmitted*a.sharpness)
+		to(sumSlowInT, transmitted/a.SpeedIn)
+		to(sumSlowOutT, transmitted/a.SpeedOut)
 	}
-	to(sumR, 2*root*g)
-	to(sumDelayR, 3*root*g*a.sharpness)
-	to(sumSlowR, 2*root*g/a.SpeedIn)
-	to(sumA, 2*nu*a.Absorption*g)
-	to(sumDwell, 2*nu*a.Dwell*g)
+	to(sumR, reflected)
+	to(sumDelayR, 1.5*reflected*a.sharpness)
+	to(sumSlowR, reflected/a.SpeedIn)
+	to(sumA, (2*nu+weight)*a.Absorption*g)
+	to(sumDwell, (2*nu+weight)*a.Dwell*g)
 }
 
 // sigmas is how many standard deviations of the jitter count as its bound.
