@@ -17,7 +17,7 @@ type lossyLayer struct {
 // set fills f for complex kinetic energy e = E + i loss - V, mass m and
 // thickness d.
 func (f *lossyLayer) set(e complex128, m, d float64) {
-	z := complex(2*m*d*d, 0) * e
+	z := scaled(e, 2*m*d*d)
 	f.mass, f.length = m, d
 	f.theta = cmplx.Sqrt(z)
 	if imag(f.theta) < 0 {
@@ -25,40 +25,42 @@ func (f *lossyLayer) set(e complex128, m, d float64) {
 	}
 	var c, s, sz complex128
 	c, s, f.growth = cosine(f.theta, z)
-	if cmplx.Abs(z) > series {
-		sz = (c - s) / (2 * z)
+	if square(z) > series*series {
+		sz = scaled((c-s)*cmplx.Conj(z), 1/(2*square(z)))
 	} else {
-		sz = entireSz(z)
+		sz = entire(z, &seriesOfSz)
 	}
-	md := complex(m*d, 0)
-	dd := complex(d, 0)
-	f.m = [4]complex128{c, -md * s, z / md * s, c}
-	f.d = [4]complex128{-md * dd * s, -2 * md * md * dd * sz, dd * (c + s), -md * dd * s}
+	md := m * d
+	f.m = [4]complex128{c, scaled(s, -md), scaled(z*s, 1/md), c}
+	f.d = [4]complex128{scaled(s, -md*d), scaled(sz, -2*md*md*d), scaled(c+s, d), scaled(s, -md*d)}
 }
+
+// scaled is x z.
+func scaled(z complex128, x float64) complex128 { return complex(x*real(z), x*imag(z)) }
 
 // cosine returns cos theta and sin theta/theta, theta^2 = z, over
 // exp(growth).
 func cosine(theta, z complex128) (c, s complex128, growth float64) {
-	if cmplx.Abs(z) <= series {
-		return entireC(z), entireS(z), 0
+	if square(z) <= series*series {
+		return entire(z, &seriesOfC), entire(z, &seriesOfS), 0
 	}
 	sin, cos := math.Sincos(real(theta))
 	growth = imag(theta)
 	fade := math.Exp(-2 * growth)
 	// exp(-i theta) leads; exp(i theta) is smaller by fade.
 	c = complex(cos*(1+fade)/2, -sin*(1-fade)/2)
-	s = complex(sin*(1+fade)/2, cos*(1-fade)/2) / theta
-	return c, s, growth
+	s = complex(sin*(1+fade)/2, cos*(1-fade)/2)
+	return c, scaled(s*cmplx.Conj(theta), 1/square(theta)), growth
 }
 
 // density is the integral of |u|^2 over the layer, over exp(2 growth); u and
 // w stand at the right face.
 func (f *lossyLayer) density(u, w complex128) float64 {
-	if cmplx.Abs(f.theta) < 1 {
+	if square(f.theta) < 1 {
 		return f.sampled(u, w)
 	}
 	// u = a exp(i theta y) + b exp(-i theta y), y from 0 at the right face to 1.
-	t := complex(0, f.mass*f.length) * w / f.theta
+	t := complex(0, f.mass*f.length/square(f.theta)) * w * cmplx.Conj(f.theta)
 	a, b := (u+t)/2, (u-t)/2
 	alpha, eta := real(f.theta), imag(f.theta)
 	fade := math.Exp(-2 * eta)
@@ -96,16 +98,20 @@ func (f *lossyLayer) sampled(u, w complex128) float64 {
 // square is |z|^2.
 func square(z complex128) float64 { return real(z)*real(z) + imag(z)*imag(z) }
 
-// entireC, entireS and entireSz are seriesC, seriesS and seriesSz for a
-// complex argument.
-func entireC(z complex128) complex128 {
-	return 1 - z/2*(1-z/12*(1-z/30*(1-z/56*(1-z/90*(1-z/132*(1-z/182))))))
-}
+// The power series in z of cos sqrt z, sin sqrt z/sqrt z and the derivative of
+// the latter, to rounding for |z| <= 1/4.
+var (
+	seriesOfC = [8]float64{1, -1.0 / 2, 1.0 / 24, -1.0 / 720, 1.0 / 40320, -1.0 / 3628800, 1.0 / 479001600, -1.0 / 87178291200}
+	seriesOfS = [8]float64{1, -1.0 / 6, 1.0 / 120, -1.0 / 5040, 1.0 / 362880, -1.0 / 39916800, 1.0 / 6227020800, -1.0 / 1307674368000}
 
-func entireS(z complex128) complex128 {
-	return 1 - z/6*(1-z/20*(1-z/42*(1-z/72*(1-z/110*(1-z/156*(1-z/210))))))
-}
+	seriesOfSz = [8]float64{-1.0 / 6, 2.0 / 120, -3.0 / 5040, 4.0 / 362880, -5.0 / 39916800, 6.0 / 6227020800, -7.0 / 1307674368000, 8.0 / 355687428096000}
+)
 
-func entireSz(z complex128) complex128 {
-	return -1.0/6 + z*(2.0/120-z*(3.0/5040-z*(4.0/362880-z*(5.0/39916800-z*(6.0/6227020800-z*7.0/1307674368000)))))
+// entire sums a series by Horner's rule.
+func entire(z complex128, c *[8]float64) complex128 {
+	sum := complex(c[7], 0)
+	for n := 6; n >= 0; n-- {
+		sum = sum*z + complex(c[n], 0)
+	}
+	return sum
 }
