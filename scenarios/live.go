@@ -203,10 +203,34 @@ func (l *Live) Contact() int { return l.tickAt(l.Outlook.Contact) }
 func (l *Live) Kept() (moments, bytes int) { return l.past.size() }
 
 // Result is that of the run, as it stands; once Ended it is what Trial.Finish
-// returns for the same scenario.
+// returns for the same scenario. Before, a mean arrival is given as soon as a
+// thousandth of what is to arrive has, and a group delay when next to all has:
+// earlier they are means over nothing, or over the front alone.
 func (l *Live) Result() *Result {
 	if l.Ended() {
 		return l.Trial.Result(l.status)
 	}
-	return l.between.Result(propagate.Running)
+	r := l.between.Result(propagate.Running)
+	passed := l.between.ledger()
+	for i := range r.Quantities {
+		q := &r.Quantities[i]
+		switch q.Name {
+		case "arrival_transmitted":
+			q.veil(passed.Transmitted < 1e-3*l.Outlook.Predicted.Transmitted)
+		case "arrival_reflected":
+			q.veil(passed.Reflected < 1e-3*l.Outlook.Predicted.Reflected)
+		case "group_delay_transmitted":
+			q.veil(passed.Transmitted < 0.99*l.Outlook.Predicted.Transmitted)
+		case "group_delay_reflected":
+			q.veil(passed.Reflected < 0.99*l.Outlook.Predicted.Reflected)
+		}
+	}
+	return r
+}
+
+// veil takes back what was measured, where that means nothing yet.
+func (q *Measure) veil(empty bool) {
+	if empty {
+		q.Packet, q.Difference = nil, nil
+	}
 }

@@ -37,8 +37,14 @@ type Moment struct {
 	Low, High                 []float64
 	Ledger                    Ledger
 	Result                    *Result
-	// Probability per time through the planes, in bins of BinTime, up to
-	// Reached.
+	// Flow through the planes up to Reached: tick by tick, for as long as that
+	// is kept, and in bins over the whole run.
+	First, Whole Flows
+}
+
+// Flows are outward flows through both planes, probability per time, in bins
+// of equal length.
+type Flows struct {
 	Near, Far []float64
 	BinTime   float64
 }
@@ -68,12 +74,18 @@ func (l *Live) now() float64 { return l.between.Run.Ledger().Time }
 
 // flows copies the history.
 func (l *Live) flows(m *Moment) {
+	m.First = l.shown(l.history.first, 1)
+	m.Whole = l.shown(l.history.whole.flows, max(1, l.history.whole.width))
+}
+
+// shown is a history in display units.
+func (l *Live) shown(f flows, width int) Flows {
 	unit := l.Trial.Scenario.Scale.Time
-	m.BinTime = float64(max(l.history.width, 1)) * l.TickTime()
-	m.Near, m.Far = make([]float64, len(l.history.near)), make([]float64, len(l.history.far))
-	for i := range m.Near {
-		m.Near[i], m.Far[i] = l.history.near[i]/unit, l.history.far[i]/unit
+	out := Flows{make([]float64, len(f.near)), make([]float64, len(f.near)), float64(width) * l.TickTime()}
+	for i := range f.near {
+		out.Near[i], out.Far[i] = f.near[i]/unit, f.far[i]/unit
 	}
+	return out
 }
 
 // samplesPerFringe points are taken in a fringe of the interference, so that
@@ -106,13 +118,11 @@ func (l *Live) columns(m *Moment, psi []complex128) {
 	l.relate(m)
 }
 
-// relate turns the current into a part of speed times density, the density
-// taken over a fringe: between the crests of a standing wave there is nothing
-// that could flow.
+// relate turns the current into a part of what the density could carry at the
+// speed that the mean energy has there, the density taken over a fringe:
+// between the crests of a standing wave there is nothing that could flow.
 func (l *Live) relate(m *Moment) {
 	w := m.Window
-	near, _ := l.Trial.Scenario.leads()
-	speed := l.Trial.Scenario.Packet.K0 / near.Mass
 	reach := int(l.Outlook.Fringe / 2 / ((w.To - w.From) / float64(w.Columns)))
 	reach = min(reach, w.Columns)
 	sum, count, lead := 0.0, 0, 0
@@ -129,7 +139,7 @@ func (l *Live) relate(m *Moment) {
 			m.Flow[c] = 0
 			continue
 		}
-		m.Flow[c] = math.Max(-1, math.Min(1, m.Flow[c]/(speed*mean)))
+		m.Flow[c] = math.Max(-1, math.Min(1, m.Flow[c]/(l.profile.speed[c]*mean)))
 	}
 }
 
@@ -151,7 +161,7 @@ func (l *Live) free(m *Moment) {
 func (l *Live) heights(m *Moment) {
 	w := m.Window
 	if l.profile.window != w {
-		l.profile = profile{w, make([]float64, w.Columns), make([]float64, w.Columns)}
+		l.profile = profile{w, make([]float64, w.Columns), make([]float64, w.Columns), l.speeds(w)}
 		unit := l.Trial.Scenario.Scale
 		for c := range w.Columns {
 			low, high := heightsIn(l.Trial.Scenario.Structure, w.edge(c)/unit.Length, w.edge(c+1)/unit.Length)
@@ -165,6 +175,23 @@ func (l *Live) heights(m *Moment) {
 type profile struct {
 	window    Window
 	low, high []float64
+	speed     []float64 // internal units
+}
+
+// speeds are those of the packet's mean energy in the middle of each column,
+// and the packet's own where that energy is not allowed.
+func (l *Live) speeds(w Window) []float64 {
+	s, unit := l.Trial.Scenario, l.Trial.Scenario.Scale.Length
+	near, _ := s.leads()
+	out := make([]float64, w.Columns)
+	for c := range out {
+		x := (w.edge(c) + w.edge(c+1)) / 2 / unit
+		out[c] = s.Packet.K0 / near.Mass
+		if kinetic := s.Packet.Energy - s.Structure.HeightAt(x); kinetic > 0 {
+			out[c] = math.Sqrt(2 * kinetic / s.Structure.MassAt(x))
+		}
+	}
+	return out
 }
 
 // heightSamples points are looked at in each segment within a column, both

@@ -165,8 +165,12 @@ func TestMemoryIsBounded(t *testing.T) {
 	if moments, _ := l.Kept(); moments < MostKept/2 {
 		t.Errorf("only %d moments kept", moments)
 	}
-	if n := len(l.Moment(Window{-1, 1, 2}).Near); n > mostBins || n < mostBins/2 {
+	m := l.Moment(Window{-1, 1, 2})
+	if n := len(m.Whole.Near); n > mostBins || n < mostBins/2 {
 		t.Errorf("%d bins of history, want %d to %d", n, mostBins/2, mostBins)
+	}
+	if n := len(m.First.Near); n != firstTicks {
+		t.Errorf("%d first ticks kept, want %d", n, firstTicks)
 	}
 }
 
@@ -177,11 +181,11 @@ func TestHistoryAddsUpToTheLedger(t *testing.T) {
 	for l.Tick() {
 	}
 	m := l.Moment(Window{-1, 1, 2})
-	far := 0.0
-	for i, v := range m.Far {
-		width := m.BinTime
-		if i == len(m.Far)-1 {
-			width = m.Time - m.BinTime*float64(i)
+	far, flows := 0.0, m.Whole
+	for i, v := range flows.Far {
+		width := flows.BinTime
+		if i == len(flows.Far)-1 {
+			width = m.Time - flows.BinTime*float64(i)
 		}
 		far += v * width
 	}

@@ -1,8 +1,8 @@
 package tui
 
 import (
-	"fmt"
 	"math"
+	"unicode/utf8"
 
 	"fluxtoll/scenarios"
 	"fluxtoll/tui/canvas"
@@ -15,6 +15,16 @@ type arrivals struct {
 	moment  *scenarios.Moment
 	outlook *scenarios.Outlook
 	log     bool
+}
+
+// flows are the flows to draw: tick by tick if these are kept up to the end of
+// the axis.
+func (a arrivals) flows() scenarios.Flows {
+	first := a.moment.First
+	if covered := float64(len(first.Far)) * first.BinTime; covered >= math.Min(a.end(), a.moment.Reached)*(1-1e-9) {
+		return first
+	}
+	return a.moment.Whole
 }
 
 // lane is one plane's part of the panel.
@@ -44,10 +54,10 @@ func (a arrivals) draw() {
 }
 
 func (a arrivals) lanes() (far, near lane) {
-	p := a.outlook.Arrivals
-	far = lane{name: "far", flux: a.moment.Far, style: canvas.Right, predicted: p.Transmitted, free: p.FreeTransmitted,
+	p, flows := a.outlook.Arrivals, a.flows()
+	far = lane{name: "far", flux: flows.Far, style: canvas.Right, predicted: p.Transmitted, free: p.FreeTransmitted,
 		mean: a.measured("arrival_transmitted"), top: p.PeakTransmitted}
-	near = lane{name: "near", flux: a.moment.Near, style: canvas.Left, predicted: p.Reflected, free: p.FreeReflected,
+	near = lane{name: "near", flux: flows.Near, style: canvas.Left, predicted: p.Reflected, free: p.FreeReflected,
 		mean: a.measured("arrival_reflected"), top: p.PeakReflected}
 	if a.outlook.Side == scenarios.FromRight {
 		far.style, near.style = near.style, far.style
@@ -75,11 +85,12 @@ func (a arrivals) end() float64 {
 }
 
 // now is the number of bins up to the present.
-func (a arrivals) now(flux []float64) int {
-	if a.moment.BinTime <= 0 {
+func (a arrivals) now() int {
+	f := a.flows()
+	if f.BinTime <= 0 {
 		return 0
 	}
-	return min(len(flux), int(math.Ceil(a.moment.Time/a.moment.BinTime-1e-9)))
+	return min(len(f.Far), int(math.Ceil(a.moment.Time/f.BinTime-1e-9)))
 }
 
 func (a arrivals) lane(l lane) {
@@ -89,7 +100,7 @@ func (a arrivals) lane(l lane) {
 	}
 	l.Plot()
 	wide, high := l.Dots()
-	known := a.now(l.flux)
+	known := a.now()
 	s := scale{top: l.top, log: a.log}
 	for _, v := range l.flux {
 		s.top = math.Max(s.top, v)
@@ -113,10 +124,11 @@ func (a arrivals) lane(l lane) {
 
 // bins is the range of bins in a column of dots, at least one.
 func (a arrivals) bins(x, wide int) (from, to int) {
-	if a.moment.BinTime <= 0 {
+	f := a.flows()
+	if f.BinTime <= 0 {
 		return 0, 0
 	}
-	perDot := a.end() / a.moment.BinTime / float64(wide)
+	perDot := a.end() / f.BinTime / float64(wide)
 	from = int(float64(x) * perDot)
 	return from, max(from+1, int(float64(x+1)*perDot))
 }
@@ -140,24 +152,35 @@ func (a arrivals) caption(l lane) {
 		return
 	}
 	f := timeFormat(a.end(), 8)
-	f.decimals = min(f.decimals, 2)
+	f.decimals = max(0, f.decimals-2)
 	x := l.Text(0, 0, l.style, l.name)
 	mean := missing
-	if l.mean != nil && a.now(l.flux) > 0 && *l.mean > 0 && *l.mean <= a.end() {
+	if l.mean != nil {
 		mean = f.text(*l.mean)
 	}
-	text := fmt.Sprintf(" mean %s of %s", pad(mean, len(f.text(*l.predicted))), withUnit(f.text(*l.predicted), a.outlook.Units.Time))
-	x = l.Text(x, 0, canvas.Faint, cut(text, l.Wide-x))
+	predicted := f.text(*l.predicted)
+	mean = pad(mean, len(predicted))
+	free := ""
 	if l.free != nil {
-		if text := ", free flight " + f.text(*l.free); x+len(text) <= l.Wide {
+		free = "  ┊ free flight " + f.text(*l.free)
+	}
+	unit := a.outlook.Units.Time
+	for _, text := range []string{
+		" mean so far " + mean + "  ┃ predicted " + withUnit(predicted+free, unit),
+		" mean so far " + mean + "  ┃ predicted " + withUnit(predicted, unit),
+		" mean " + mean + "  ┃ " + withUnit(predicted, unit),
+		" " + mean + " ┃ " + withUnit(predicted, unit),
+	} {
+		if utf8.RuneCountInString(text) <= l.Wide-x {
 			l.Text(x, 0, canvas.Faint, text)
+			return
 		}
 	}
 }
 
 // axis numbers the times.
 func (a arrivals) axis(b canvas.Box) {
-	marks, f := ticks(0, a.end(), b.Wide/10)
+	marks, f := ticks(0, a.end(), b.Wide/8)
 	unit := a.outlook.Units.Time
 	b.TextRight(b.Wide, 0, canvas.Faint, unit)
 	for _, t := range marks {

@@ -1,7 +1,6 @@
 package tui
 
 import (
-	"fmt"
 	"math"
 	"strconv"
 	"strings"
@@ -126,6 +125,3 @@ func ticks(from, to float64, n int) ([]float64, format) {
 	}
 	return out, format{max(0, int(math.Ceil(-math.Log10(step)-1e-9))), false}
 }
-
-// percent writes a part.
-func percent(f float64) string { return fmt.Sprintf("%3.0f%%", 100*math.Max(0, math.Min(1, f))) }

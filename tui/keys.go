@@ -24,7 +24,7 @@ type binding struct {
 	key.Binding
 	section string
 	act     func(*Model) tea.Cmd
-	hint    bool // named in the last line of the screen
+	hint    string // how the last line of the screen names it, if it does
 }
 
 // bind makes a binding; shown is how the help writes the keys.
@@ -33,8 +33,8 @@ func bind(section, shown, does string, act func(*Model) tea.Cmd, keys ...string)
 }
 
 // hinted names a binding in the last line of the screen.
-func hinted(b binding) binding {
-	b.hint = true
+func hinted(hint string, b binding) binding {
+	b.hint = hint
 	return b
 }
 
@@ -81,7 +81,7 @@ func without(list, taken []binding) []binding {
 		}
 		if len(free) > 0 {
 			b.SetKeys(free...)
-			b.hint = false
+			b.hint = ""
 			out = append(out, b)
 		}
 	}
@@ -103,9 +103,9 @@ func timeKeys() []binding {
 	goTo := func(p player.Place) func(*Model) tea.Cmd { return do(func(m *Model) { m.player.Go(p) }) }
 	pace := func(n int) func(*Model) tea.Cmd { return do(func(m *Model) { m.player.Faster(n) }) }
 	return []binding{
-		hinted(bind(s, "space", "pause, go on", do(func(m *Model) { m.player.Pause() }), " ")),
-		hinted(bind(s, "→ .", "a little forward", step(1), "right", ".")),
-		hinted(bind(s, "← ,", "a little back", step(-1), "left", ",")),
+		hinted("space pause", bind(s, "space", "pause, go on", do(func(m *Model) { m.player.Pause() }), " ")),
+		hinted("← → step", bind(s, "→ .", "a little forward", step(1), "right", ".")),
+		bind(s, "← ,", "a little back", step(-1), "left", ","),
 		bind(s, "shift+→ >", "a step of the run forward", stride(1), "shift+right", ">"),
 		bind(s, "shift+← <", "a step of the run back", stride(-1), "shift+left", "<"),
 		bind(s, "home g", "to the start", goTo(player.AtStart), "home", "g"),
@@ -127,7 +127,7 @@ func viewKeys() []binding {
 	keep := func(f fit) func(*Model) tea.Cmd { return do(func(m *Model) { m.look(func() { m.view.fit = f }) }) }
 	return []binding{
 		bind(s, "l", "density linear or logarithmic", do(func(m *Model) { m.view.log = !m.view.log }), "l"),
-		hinted(bind(s, "d", "free packet as an outline: the delay", do(func(m *Model) { m.view.ghost = !m.view.ghost }), "d")),
+		hinted("d free packet", bind(s, "d", "free packet as an outline: the delay", do(func(m *Model) { m.view.ghost = !m.view.ghost }), "d")),
 		bind(s, "↑ i", "zoom in", zoom(0.75), "up", "i"),
 		bind(s, "↓ o", "zoom out", zoom(1/0.75), "down", "o"),
 		bind(s, "[", "pan to the left", pan(-0.125), "["),
@@ -154,7 +154,7 @@ func panelKeys() []binding {
 func scenarioKeys() []binding {
 	const s = "Scenario and files"
 	return []binding{
-		hinted(bind(s, "e", "change a quantity", do((*Model).edit), "e")),
+		hinted("e change", bind(s, "e", "change a quantity", do((*Model).edit), "e")),
 		bind(s, "n", "choose another scenario", do((*Model).choose), "n"),
 		bind(s, "W", "write the scenario to a file", do((*Model).askScenario), "W"),
 		bind(s, "t", "write this frame as text", do((*Model).askText), "t"),
@@ -165,8 +165,8 @@ func scenarioKeys() []binding {
 func leaveKeys() []binding {
 	const s = "Keys"
 	return []binding{
-		hinted(bind(s, "?", "this list", do(func(m *Model) { m.enter(helping) }), "?")),
-		hinted(bind(s, "q ctrl+c", "leave", leave, "q", "ctrl+c")),
+		hinted("? keys", bind(s, "?", "this list", do(func(m *Model) { m.enter(helping) }), "?")),
+		hinted("q leave", bind(s, "q ctrl+c", "leave", leave, "q", "ctrl+c")),
 		bind(s, "ctrl+z", "to the shell for a while", func(*Model) tea.Cmd { return tea.Suspend }, "ctrl+z"),
 	}
 }
@@ -181,16 +181,16 @@ func editingKeys() []binding {
 	}
 	size := func(n int) func(*Model) tea.Cmd { return do(func(m *Model) { m.editor.resize(n) }) }
 	return []binding{
-		hinted(bind(s, "↑ ↓", "pick", pick(-1), "up")),
+		hinted("↑ ↓ pick", bind(s, "↑", "pick the one before", pick(-1), "up")),
 		bind(s, "↓", "pick the next", pick(1), "down"),
-		hinted(bind(s, "← →", "less, more", change(-1), "left")),
+		hinted("← → change", bind(s, "←", "less", change(-1), "left")),
 		bind(s, "→", "more", change(1), "right"),
-		hinted(bind(s, "[ ]", "step larger, finer", size(-1), "[")),
+		hinted("[ ] step", bind(s, "[", "step ten times larger", size(-1), "[")),
 		bind(s, "]", "step ten times finer", size(1), "]"),
-		hinted(bind(s, "enter", "type a value", do((*Model).askValue), "enter")),
+		hinted("enter type", bind(s, "enter", "type a value", do((*Model).askValue), "enter")),
 		bind(s, "u", "back to the first value", do(func(m *Model) { m.apply(m.editor.reset) }), "u", "backspace"),
-		hinted(bind(s, "W", "write to a file", do((*Model).askScenario), "W")),
-		hinted(bind(s, "esc", "done", do(func(m *Model) { m.done() }), "esc", "e")),
+		hinted("W write", bind(s, "W", "write the scenario to a file", do((*Model).askScenario), "W")),
+		hinted("esc done", bind(s, "esc e", "done", do(func(m *Model) { m.done() }), "esc", "e")),
 	}
 }
 
@@ -198,11 +198,11 @@ func choosingKeys() []binding {
 	const s = "Choosing"
 	pick := func(n int) func(*Model) tea.Cmd { return do(func(m *Model) { m.chooser.move(n) }) }
 	return []binding{
-		hinted(bind(s, "↑ ↓", "pick", pick(-1), "up", "k")),
-		bind(s, "↓", "pick the next", pick(1), "down", "j"),
-		hinted(bind(s, "enter", "watch it", do((*Model).chosen), "enter")),
-		hinted(bind(s, "esc", "back", (*Model).back, "esc")),
-		hinted(bind(s, "q ctrl+c", "leave", leave, "q", "ctrl+c")),
+		hinted("↑ ↓ pick", bind(s, "↑ k", "pick the one before", pick(-1), "up", "k")),
+		bind(s, "↓ j", "pick the next", pick(1), "down", "j"),
+		hinted("enter watch", bind(s, "enter", "watch it", do((*Model).chosen), "enter")),
+		hinted("esc back", bind(s, "esc", "back", (*Model).back, "esc")),
+		hinted("q leave", bind(s, "q ctrl+c", "leave", leave, "q", "ctrl+c")),
 	}
 }
 
@@ -241,12 +241,13 @@ func helpingKeys() []binding {
 func hints(in mode) string {
 	text := ""
 	for _, b := range keyMap(in) {
-		if b.hint {
-			if text != "" {
-				text += "  "
-			}
-			text += b.Help().Key + " " + b.Help().Desc
+		if b.hint == "" {
+			continue
 		}
+		if text != "" {
+			text += "   "
+		}
+		text += b.hint
 	}
 	return text
 }

@@ -53,15 +53,22 @@ func (n numbers) draw() {
 	}
 	n.header()
 	times := n.times()
-	for i, q := range n.result.Quantities {
-		if i+1 >= room {
+	y := 1
+	for _, q := range n.result.Quantities {
+		if y >= room {
 			break
 		}
-		n.row(i+1, q, times)
+		n.row(y, q, times)
+		y++
 	}
-	if len(shifts) > 0 {
-		n.explain(n.Inside(0, min(room, 1+len(n.result.Quantities)), n.Wide, 1+len(shifts)), shifts)
+	if len(shifts) == 0 {
+		return
 	}
+	if y < room {
+		y++ // a blank line
+	}
+	e := explanation{n.Inside(0, y, n.Wide, n.High-y), shifts, n.result, n.unit}
+	e.draw()
 }
 
 // columns are where the columns end, left to right: plane wave (0 where there
@@ -152,43 +159,4 @@ func (n numbers) row(y int, q scenarios.Measure, times format) {
 		mark = '≠'
 	}
 	n.Put(c[2]+1, y, canvas.Strong, mark)
-}
-
-// explain says by how much each part comes later than in free flight, and
-// why: the structure itself, the exit lead, and the filtering of the packet.
-func (n numbers) explain(b canvas.Box, shifts []scenarios.Shift) {
-	size, exit := 0.0, false
-	for _, s := range shifts {
-		size = math.Max(size, math.Max(math.Abs(s.Total), math.Max(math.Abs(s.Structure), math.Abs(s.Filter))))
-		exit = exit || math.Abs(s.Exit) > 1e-9*math.Abs(s.Total)
-	}
-	f := timeFormat(size, 8)
-	f.decimals = min(f.decimals, 3)
-	b.Text(0, 0, canvas.Faint, "free flight")
-	columns := []struct {
-		name string
-		end  int
-		of   func(scenarios.Shift) float64
-	}{
-		{"late by", 20, func(s scenarios.Shift) float64 { return s.Total }},
-		{"structure", 30, func(s scenarios.Shift) float64 { return s.Structure }},
-		{"filter", 39, func(s scenarios.Shift) float64 { return s.Filter }},
-		{"exit lead", 49, func(s scenarios.Shift) float64 { return s.Exit }},
-	}
-	if !exit {
-		columns = columns[:3]
-	}
-	for i, c := range columns {
-		b.TextRight(c.end, 0, canvas.Faint, c.name)
-		style := canvas.Plain
-		if i == 0 {
-			style = canvas.Strong
-		}
-		for y, s := range shifts {
-			b.TextRight(c.end, y+1, style, f.signed(c.of(s)))
-		}
-	}
-	for y, s := range shifts {
-		b.Text(0, y+1, canvas.Plain, s.Part)
-	}
 }

@@ -112,12 +112,8 @@ func (s screen) oneLine(c *canvas.Canvas) {
 }
 
 func (s screen) header(b canvas.Box) {
-	done := 0.0
-	if d := s.frame.Outlook.Duration; d > 0 {
-		done = s.frame.Moment.Time / d
-	}
-	right := fmt.Sprintf("%s %s", s.state(), s.clock())
-	for _, more := range []string{" " + pad(s.pace(), 5), " " + percent(done), fmt.Sprintf("  step %d", s.frame.Moment.Steps)} {
+	right := s.state() + " " + s.clock()
+	for _, more := range []string{" " + pad(s.pace(), 5), fmt.Sprintf("  step %4d", s.frame.Moment.Steps)} {
 		if utf8.RuneCountInString(right+more) < b.Wide*3/5 {
 			right += more
 		}

@@ -97,16 +97,19 @@ func (s spectrum) curve(b canvas.Box) {
 }
 
 func (s spectrum) caption(b canvas.Box) {
-	text := "energies sent, T from 0 to 1 as a line"
+	long, brief := "energies of the packet; line: T from 0 to 1", "energies, line: T"
 	if s.parted {
-		text = "energies transmitted / reflected, line: T"
+		long, brief = "energies of what is transmitted and reflected; line: T", "transmitted, reflected, T"
 	}
-	b.Text(0, 0, canvas.Faint, cut(text, b.Wide))
+	if len(long) > b.Wide {
+		long = brief
+	}
+	b.Text(0, 0, canvas.Faint, cut(long, b.Wide))
 }
 
 // axis numbers the energies.
 func (s spectrum) axis(b canvas.Box) {
-	marks, f := ticks(s.data.From, s.data.To, b.Wide/10)
+	marks, f := ticks(s.data.From, s.data.To, b.Wide/8)
 	b.TextRight(b.Wide, 0, canvas.Faint, s.unit)
 	for _, e := range marks {
 		text := f.text(e)

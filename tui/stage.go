@@ -68,7 +68,7 @@ type stage struct {
 
 func (s stage) draw() {
 	high := s.High - 2
-	profile := max(1, high*2/5)
+	profile := max(1, (high*2+3)/5)
 	density := s.Inside(0, 0, s.Wide, high-profile)
 	s.density(density)
 	s.strip(s.Inside(0, density.High, s.Wide, 1))

@@ -20,7 +20,7 @@ type Frame struct {
 	Tick     float64 // length of a tick in display units
 	Paused   bool
 	Seeking  bool
-	Tail     bool // there is nothing more to see before the end
+	Tail     bool    // there is nothing more to see before the end
 	Loading  bool    // a newer scenario is being prepared
 	Pace     float64 // times the normal pace
 	Err      error   // why a scenario could not be prepared, or what went wrong
