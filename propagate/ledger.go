@@ -47,6 +47,8 @@ type Ledger struct {
 	FlowLeft    float64   // mean outward flow through the left plane in the last step, probability per time
 	FlowRight   float64   // the same at the right plane
 	start       float64   // probability between the planes at t = 0
+	since       float64   // time and number of steps when the present step size began
+	sinceSteps  int
 }
 
 func newLedger(m *Mesh, psi wave) Ledger {
@@ -70,8 +72,11 @@ func (l *Ledger) enter(dt, left, right float64, lost []float64) {
 	}
 	l.FlowLeft, l.FlowRight = left/dt, right/dt
 	l.Steps++
-	l.Time = float64(l.Steps) * dt
+	l.Time = l.since + float64(l.Steps-l.sinceSteps)*dt
 }
+
+// mark notes that the step size changes now.
+func (l *Ledger) mark() { l.since, l.sinceSteps = l.Time, l.Steps }
 
 // TotalLost is the probability absorbed in all layers.
 func (l *Ledger) TotalLost() float64 { return sum(l.Lost) }

@@ -14,6 +14,9 @@ type Ending struct {
 	// it now falls by a factor e (+Inf where it does not fall). A nil
 	// Settled is never content.
 	Settled func(l *Ledger, remaining, lifetime float64) bool
+	// Slow, if not nil, is asked after Settled: is what remains so little
+	// that the run may go on in longer steps (Stepper.Lengthen)?
+	Slow func(l *Ledger, remaining, lifetime float64) bool
 	// Watch, if not nil, is called after every step.
 	Watch func(l *Ledger)
 }
@@ -70,6 +73,9 @@ func (r *Run) Next() Status {
 		r.inspect()
 		if r.ending.Settled != nil && r.ending.Settled(l, r.Remaining, r.Lifetime) {
 			return Settled
+		}
+		if r.ending.Slow != nil && r.ending.Slow(l, r.Remaining, r.Lifetime) {
+			r.Lengthen()
 		}
 	}
 	return limit

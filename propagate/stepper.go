@@ -8,17 +8,17 @@ import (
 // Stepper carries one packet through time on a mesh. It owns its wave
 // function; the mesh is shared. One goroutine at a time may use it.
 type Stepper struct {
-	Mesh   *Mesh
-	Pade   Pade
-	Step   float64 // dt
-	Origin float64 // the energy from which phases are counted
+	Mesh *Mesh
+	Pade Pade
 
-	psi     wave
-	nodal   []complex128 // psi on the nodes, as of the last call of Psi
-	factors []*factor
-	chi     []complex128 // scratch: chi on the faces
-	ledger  Ledger
-	lost    []float64 // scratch: absorbed in this step, by layer
+	*gear          // the present one
+	gears  []*gear // all that were used
+	psi    wave
+	nodal  []complex128 // psi on the nodes, as of the last call of Psi
+	chi    []complex128 // scratch: chi on the faces
+	ledger Ledger
+	lost   []float64 // scratch: absorbed in this step, by layer
+	mirror bool
 }
 
 // NewStepper prepares the factors of the step and puts the packet at t = 0.
@@ -34,7 +34,7 @@ func newStepper(m *Mesh, pade Pade, dt, origin float64, packet Packet, mirror bo
 		return nil, fmt.Errorf("propagate: time step %g is not greater than zero", dt)
 	}
 	s := &Stepper{
-		Mesh: m, Pade: pade, Step: dt, Origin: origin,
+		Mesh: m, Pade: pade, mirror: mirror,
 		psi: newWave(m), nodal: make([]complex128, m.Nodes()),
 		chi:  make([]complex128, len(m.faces)),
 		lost: make([]float64, len(m.layerSpan)),
@@ -42,9 +42,7 @@ func newStepper(m *Mesh, pade Pade, dt, origin float64, packet Packet, mirror bo
 	if err := packet.fill(m, s.psi, s.nodal); err != nil {
 		return nil, err
 	}
-	for _, p := range pade.Poles {
-		s.factors = append(s.factors, newFactor(m, dt, origin, p, mirror))
-	}
+	s.shift(dt, origin)
 	s.ledger = newLedger(m, s.psi)
 	s.dwell(0)
 	return s, nil
@@ -81,11 +79,12 @@ type State struct {
 	psi    []complex128
 	ledger Ledger
 	look   look
+	gear   *gear
 }
 
 // Save copies the present moment.
 func (s *Stepper) Save() State {
-	return State{psi: slices.Clone(s.psi.all), ledger: s.ledger.Clone(), look: firstLook()}
+	return State{psi: slices.Clone(s.psi.all), ledger: s.ledger.Clone(), look: firstLook(), gear: s.gear}
 }
 
 // Restore goes back (or on) to a moment of this run. What follows is bit for
@@ -93,6 +92,7 @@ func (s *Stepper) Save() State {
 func (s *Stepper) Restore(at State) {
 	copy(s.psi.all, at.psi)
 	s.ledger = at.ledger.Clone()
+	s.gear = at.gear
 }
 
 // Bytes is the memory that a saved state takes.
