@@ -194,7 +194,7 @@ far = 32
 			Checks: []Check{
 				{"transmitted", 0.9955897486354206, []Road{Average, Packet}},
 				{"arrival_transmitted", 62.32550328794861, []Road{Average, Packet}},
-				{"group_delay_reflected", 2.766162587363027, []Road{Average, Packet}},
+				{"group_delay_reflected", 2.766162587363027, []Road{Average}}, // its spectrum reaches the threshold: too slow for 1e-6 on the packet road
 			},
 		},
 		{
