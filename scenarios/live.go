@@ -9,18 +9,21 @@ import (
 // Live is a trial that is looked at while it runs, forwards and backwards.
 // Its clock ticks more often than the run steps: between two steps a second
 // stepper of shorter step shows what lies between, started anew from each
-// step, so that the numbers of the run do not depend on being looked at.
+// step, so that the numbers of the run do not depend on being looked at. Once
+// there is nothing more to see, or the run lengthens its steps because next to
+// nothing is left, a tick is a step.
 //
 // A Live belongs to one goroutine.
 type Live struct {
 	Trial   *Trial
 	Outlook *Outlook
 	between *Trial // the trial with the stepper of shorter step; Trial itself where a tick is a step
-	ticks   int    // to a step
+	ticks   int    // to a step of the first length
 	tick    int    // now, from 0
 	reached int    // the latest tick so far
+	latest  float64
+	long    int // step after which a tick is a step; MaxInt until that is known
 	status  propagate.Status
-	ended   int // tick at which the run ended, or -1
 	past    snapshots
 	history history
 	sampler *propagate.Sampler
@@ -34,14 +37,14 @@ const (
 	ticksPerRun  = 1440
 	ticksPerStep = 48
 	finestNodes  = 20000
+	finest       = 1.25 // times the duration of what can be seen
 )
 
 // NewLive prepares a trial to be looked at. A trial whose packet road was
 // refused has an Outlook and nothing else: Ended is true from the start.
 func NewLive(t *Trial) (*Live, error) {
-	l := &Live{Trial: t, between: t, ticks: 1, ended: -1, Outlook: newOutlook(t)}
+	l := &Live{Trial: t, between: t, ticks: 1, long: math.MaxInt, Outlook: newOutlook(t)}
 	if t.Run == nil {
-		l.ended = 0
 		return l, nil
 	}
 	l.sampler = propagate.NewSampler(t.Plan.Mesh)
@@ -76,11 +79,9 @@ func (l *Live) refine() error {
 
 // align puts the finer stepper on the present step of the run.
 func (l *Live) align() {
-	if l.between == l.Trial {
-		return
+	if l.between != l.Trial {
+		l.between.Run.Follow(l.Trial.Run.Stepper)
 	}
-	l.between.Run.Restore(l.Trial.Run.Save())
-	l.between.Run.Ledger().Steps *= l.ticks
 }
 
 // packet is the packet at t = 0, as the packet road takes it.
@@ -92,47 +93,74 @@ func (t *Trial) packet() propagate.Packet {
 	return propagate.Packet{Centre: t.Plan.at(t.Plan.start), Length: t.Scenario.Packet.Length, K0: k0}
 }
 
+// stepOf is the step at or before a tick, and how many ticks lie between.
+func (l *Live) stepOf(tick int) (step, rest int) {
+	if step = tick / l.ticks; step < l.long {
+		return step, tick % l.ticks
+	}
+	return l.long + tick - l.long*l.ticks, 0
+}
+
+// tickOf is the tick of a step.
+func (l *Live) tickOf(step int) int {
+	if step <= l.long {
+		return step * l.ticks
+	}
+	return l.long*l.ticks + step - l.long
+}
+
+// whole reports whether the next tick completes a step of the run.
+func (l *Live) whole() bool {
+	step, rest := l.stepOf(l.tick)
+	return step >= l.long || rest == l.ticks-1
+}
+
 // Tick moves on by one tick and reports whether the run goes on. At the end
 // of the run it does nothing.
 func (l *Live) Tick() bool {
 	if l.Ended() {
 		return false
 	}
-	far, near := l.advance()
+	before := l.time()
+	near, far := l.advance()
 	l.tick++
 	if l.tick > l.reached {
-		l.reached = l.tick
-		l.history.add(l.tick-1, near, far)
-	}
-	if l.tick%l.ticks == 0 && l.status != propagate.Running {
-		l.ended = l.tick
+		l.reached, l.latest = l.tick, l.time()
+		l.history.add(l.time(), near*(l.time()-before), far*(l.time()-before), l.Trial.Run.Ledger().Steps <= l.long)
 	}
 	return !l.Ended()
 }
 
 // advance moves on and returns the flow per time through both planes.
-func (l *Live) advance() (far, near float64) {
-	if l.between != l.Trial {
-		l.between.Run.Advance()
+func (l *Live) advance() (near, far float64) {
+	shown := l.between.Run
+	whole := l.whole()
+	if step, _ := l.stepOf(l.tick); step >= l.long {
+		shown = l.Trial.Run
+	} else if l.between != l.Trial {
+		shown.Advance()
 	}
-	if (l.tick+1)%l.ticks == 0 {
+	if whole {
 		l.step()
 	}
-	ledger := l.between.Run.Ledger()
-	near, far = ledger.FlowLeft, ledger.FlowRight
+	near, far = shown.Ledger().FlowLeft, shown.Ledger().FlowRight
+	if whole {
+		l.align()
+	}
 	if l.Trial.Plan.side == FromRight {
 		near, far = far, near
 	}
-	if (l.tick+1)%l.ticks == 0 {
-		l.align()
-	}
-	return far, near
+	return near, far
 }
 
 // step takes one step of the run itself.
 func (l *Live) step() {
-	l.status = l.Trial.Run.Next()
-	l.past.keep(l.Trial.Run.Ledger().Steps, l.Trial.Run)
+	run := l.Trial.Run
+	l.status = run.Next()
+	l.past.keep(run.Ledger().Steps, run)
+	if run.Step != l.Trial.Plan.TimeStep || run.Ledger().Time*l.Trial.Scenario.Scale.Time > finest*l.Outlook.Event {
+		l.long = min(l.long, run.Ledger().Steps)
+	}
 }
 
 // Back goes back to a tick that was reached before: to the nearest moment
@@ -142,7 +170,7 @@ func (l *Live) Back(tick int) {
 		return
 	}
 	tick = max(0, min(tick, l.reached))
-	step := tick / l.ticks
+	step, rest := l.stepOf(tick)
 	if here := l.Trial.Run.Ledger().Steps; step < here || l.past.nearest(step) > here {
 		l.past.restore(step, l.Trial.Run)
 		l.status = propagate.Running
@@ -151,12 +179,25 @@ func (l *Live) Back(tick int) {
 		l.status = l.Trial.Run.Next()
 	}
 	l.align()
-	for range tick - step*l.ticks {
+	for range rest {
 		l.between.Run.Advance()
 	}
-	l.tick, l.ended = tick, -1
-	if l.status != propagate.Running {
-		l.ended = tick
+	l.tick = tick
+}
+
+// BackTo goes back to the last tick not after a time, in display units.
+func (l *Live) BackTo(time float64) {
+	if l.Trial.Run == nil {
+		return
+	}
+	time = time/l.Trial.Scenario.Scale.Time*(1+1e-12) + 1e-12*l.Trial.Plan.TimeStep
+	l.Back(l.tickOf(l.past.before(time)))
+	for l.tick < l.reached {
+		l.advance()
+		if l.tick++; l.time() > time {
+			l.Back(l.tick - 1)
+			return
+		}
 	}
 }
 
@@ -169,19 +210,31 @@ func (l *Live) Reached() int { return l.reached }
 // PerStep is the number of ticks in a step of the run.
 func (l *Live) PerStep() int { return l.ticks }
 
-// Ended reports whether the run is over at the present tick.
-func (l *Live) Ended() bool { return l.ended >= 0 && l.tick >= l.ended }
+// Latest is the time of that tick, in display units.
+func (l *Live) Latest() float64 { return l.latest * l.Trial.Scenario.Scale.Time }
 
-// TickTime is the length of a tick in display units.
+// Time is the present time, in display units.
+func (l *Live) Time() float64 { return l.time() * l.Trial.Scenario.Scale.Time }
+
+// time is the present time in internal units.
+func (l *Live) time() float64 {
+	if l.Trial.Run == nil {
+		return 0
+	}
+	return l.between.Run.Ledger().Time
+}
+
+// Ended reports whether the run is over at the present tick.
+func (l *Live) Ended() bool { return l.Trial.Run == nil || l.status != propagate.Running }
+
+// TickTime is the length of a tick in display units, for as long as there is
+// something to see.
 func (l *Live) TickTime() float64 {
 	if l.Trial.Plan == nil {
 		return 0
 	}
 	return l.Trial.Plan.TimeStep / float64(l.ticks) * l.Trial.Scenario.Scale.Time
 }
-
-// Expected is the tick at which the run is expected to end.
-func (l *Live) Expected() int { return l.tickAt(l.Outlook.Duration) }
 
 // Event is the tick at which what can be seen is over.
 func (l *Live) Event() int { return l.tickAt(l.Outlook.Event) }

@@ -1,61 +1,56 @@
 package scenarios
 
-// Bounds of the history of the flow through the planes: so many of the first
-// ticks one by one, and the whole run in so many bins.
+// Bounds of the history of what passes the planes: so many of the first ticks
+// one by one, and the whole run in so many bins.
 const (
 	firstTicks = 2048
 	mostBins   = 1024
 )
 
-// history is the flow through both planes against time.
+// history is what passed both planes, against time.
 type history struct {
-	first flows // of the first ticks
-	whole bins  // of all
+	first, whole passages
+	width        int // ticks in a bin of whole
+	held         int // ticks in its last bin
 }
 
-// flows are a near and a far flow, probability per time outward.
-type flows struct{ near, far []float64 }
+// passages are probabilities that passed the planes outward, each up to a time
+// from the one before.
+type passages struct{ ends, near, far []float64 }
 
-func (f *flows) add(near, far float64) { f.near, f.far = append(f.near, near), append(f.far, far) }
-
-// bins are means over equally many ticks; when they become too many, two
-// become one.
-type bins struct {
-	flows
-	width int // ticks in a bin
-	held  int // ticks in the last bin
+func (p *passages) add(end, near, far float64) {
+	p.ends, p.near, p.far = append(p.ends, end), append(p.near, near), append(p.far, far)
 }
 
-// add enters the flow of the next tick, counted from 0.
-func (h *history) add(tick int, near, far float64) {
-	if tick < firstTicks {
-		h.first.add(near, far)
+// add enters what passed in one tick; fine tells that the tick is a short one.
+func (h *history) add(end, near, far float64, fine bool) {
+	if fine && len(h.first.ends) < firstTicks {
+		h.first.add(end, near, far)
 	}
-	h.whole.enter(tick, near, far)
-}
-
-func (b *bins) enter(tick int, near, far float64) {
-	b.width = max(b.width, 1)
-	if tick/b.width >= mostBins {
-		b.merge()
+	h.width = max(h.width, 1)
+	if len(h.whole.ends) == 0 || h.held == h.width {
+		if len(h.whole.ends) == mostBins {
+			h.merge()
+		}
+		h.whole.add(end, 0, 0)
+		h.held = 0
 	}
-	if tick/b.width >= len(b.near) {
-		b.add(0, 0)
-		b.held = 0
-	}
-	last, n := len(b.near)-1, float64(b.held)
-	b.near[last] = (b.near[last]*n + near) / (n + 1)
-	b.far[last] = (b.far[last]*n + far) / (n + 1)
-	b.held++
+	last := len(h.whole.ends) - 1
+	h.whole.ends[last] = end
+	h.whole.near[last] += near
+	h.whole.far[last] += far
+	h.held++
 }
 
 // merge makes every two bins one. They are all full, and of even number.
-func (b *bins) merge() {
-	n := len(b.near) / 2
+func (h *history) merge() {
+	p := &h.whole
+	n := len(p.ends) / 2
 	for i := range n {
-		b.near[i] = (b.near[2*i] + b.near[2*i+1]) / 2
-		b.far[i] = (b.far[2*i] + b.far[2*i+1]) / 2
+		p.ends[i] = p.ends[2*i+1]
+		p.near[i] = p.near[2*i] + p.near[2*i+1]
+		p.far[i] = p.far[2*i] + p.far[2*i+1]
 	}
-	b.near, b.far = b.near[:n], b.far[:n]
-	b.width *= 2
+	p.ends, p.near, p.far = p.ends[:n], p.near[:n], p.far[:n]
+	h.width *= 2
 }

@@ -42,12 +42,9 @@ type Moment struct {
 	First, Whole Flows
 }
 
-// Flows are outward flows through both planes, probability per time, in bins
-// of equal length.
-type Flows struct {
-	Near, Far []float64
-	BinTime   float64
-}
+// Flows are mean outward flows through both planes, probability per time, in
+// bins that end at Ends; the first begins at 0.
+type Flows struct{ Ends, Near, Far []float64 }
 
 // Moment looks at the present tick through a window.
 func (l *Live) Moment(w Window) *Moment {
@@ -56,36 +53,35 @@ func (l *Live) Moment(w Window) *Moment {
 	if l.Trial.Run == nil {
 		return m
 	}
-	unit := l.Trial.Scenario.Scale
-	m.Time = l.now() * unit.Time
+	m.Time = l.Time()
 	m.Steps = l.Trial.Run.Ledger().Steps
-	m.Reached = float64(l.reached) * l.TickTime()
+	m.Reached = l.Latest()
 	m.Ledger = l.between.ledger()
 	psi := l.between.Run.Psi()
-	m.Centre = l.sampler.Centre(psi) * unit.Length
+	m.Centre = l.sampler.Centre(psi) * l.Trial.Scenario.Scale.Length
 	l.columns(m, psi)
 	l.free(m)
 	l.flows(m)
 	return m
 }
 
-// now is the present time in internal units.
-func (l *Live) now() float64 { return l.between.Run.Ledger().Time }
-
 // flows copies the history.
 func (l *Live) flows(m *Moment) {
-	m.First = l.shown(l.history.first, 1)
-	m.Whole = l.shown(l.history.whole.flows, max(1, l.history.whole.width))
+	unit := l.Trial.Scenario.Scale.Time
+	m.First, m.Whole = l.history.first.shown(unit), l.history.whole.shown(unit)
 }
 
 // shown is a history in display units.
-func (l *Live) shown(f flows, width int) Flows {
-	unit := l.Trial.Scenario.Scale.Time
-	out := Flows{make([]float64, len(f.near)), make([]float64, len(f.near)), float64(width) * l.TickTime()}
-	for i := range f.near {
-		out.Near[i], out.Far[i] = f.near[i]/unit, f.far[i]/unit
+func (p passages) shown(unit float64) Flows {
+	n := len(p.ends)
+	f := Flows{make([]float64, n), make([]float64, n), make([]float64, n)}
+	begin := 0.0
+	for i, end := range p.ends {
+		f.Ends[i] = end * unit
+		f.Near[i], f.Far[i] = p.near[i]/(f.Ends[i]-begin), p.far[i]/(f.Ends[i]-begin)
+		begin = f.Ends[i]
 	}
-	return out
+	return f
 }
 
 // samplesPerFringe points are taken in a fringe of the interference, so that
@@ -146,7 +142,7 @@ func (l *Live) relate(m *Moment) {
 // free is the density of the packet as if the structure were not there.
 func (l *Live) free(m *Moment) {
 	unit := l.Trial.Scenario.Scale.Length
-	before, width := l.Trial.freeAt(l.now())
+	before, width := l.Trial.freeAt(l.time())
 	centre := l.Trial.Plan.at(before)
 	m.Free = make([]float64, m.Window.Columns)
 	for c := range m.Free {

@@ -15,6 +15,7 @@ const (
 type snapshots struct {
 	most, every int
 	steps       []int
+	times       []float64
 	states      []propagate.State
 }
 
@@ -33,7 +34,7 @@ func (s *snapshots) keep(step int, run *propagate.Run) {
 			return
 		}
 	}
-	s.steps, s.states = append(s.steps, step), append(s.states, run.Save())
+	s.steps, s.times, s.states = append(s.steps, step), append(s.times, run.Ledger().Time), append(s.states, run.Save())
 }
 
 // thin drops every second moment; the first stays.
@@ -42,12 +43,12 @@ func (s *snapshots) thin() {
 	n := 0
 	for i, step := range s.steps {
 		if step%s.every == 0 {
-			s.steps[n], s.states[n] = step, s.states[i]
+			s.steps[n], s.times[n], s.states[n] = step, s.times[i], s.states[i]
 			n++
 		}
 	}
 	clear(s.states[n:])
-	s.steps, s.states = s.steps[:n], s.states[:n]
+	s.steps, s.times, s.states = s.steps[:n], s.times[:n], s.states[:n]
 }
 
 // index is the last moment at or before a step.
@@ -61,6 +62,15 @@ func (s *snapshots) index(step int) int {
 
 // nearest is the step of that moment.
 func (s *snapshots) nearest(step int) int { return s.steps[s.index(step)] }
+
+// before is the step of the last moment not after a time.
+func (s *snapshots) before(time float64) int {
+	i := len(s.times) - 1
+	for i > 0 && s.times[i] > time {
+		i--
+	}
+	return s.steps[i]
+}
 
 // restore brings the run to that moment.
 func (s *snapshots) restore(step int, run *propagate.Run) { run.Restore(s.states[s.index(step)]) }

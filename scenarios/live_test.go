@@ -61,7 +61,7 @@ func TestWatchedRunEqualsUnwatched(t *testing.T) {
 			case i%97 == 0:
 				l.Moment(w)
 			}
-			if i > 20000 {
+			if i > 100000 {
 				t.Fatalf("%s: no end after %d ticks", name, i)
 			}
 		}
@@ -101,6 +101,28 @@ func TestBackShowsTheSameMoment(t *testing.T) {
 		}
 		if got.Ledger != want.Ledger || got.Time != want.Time {
 			t.Fatalf("tick %d: ledger %+v at %g; was %+v at %g", tick, got.Ledger, got.Time, want.Ledger, want.Time)
+		}
+	}
+}
+
+// Going back to a time ends at the last tick not after it.
+func TestBackToATime(t *testing.T) {
+	l := liveDemo(t, "collector-step", Forced{})
+	times := []float64{0}
+	for l.Tick() {
+		times = append(times, l.Time())
+	}
+	times = append(times, l.Time())
+	for i := 0; i < len(times); i += 1 + len(times)/40 {
+		for _, late := range []float64{0, 0.4} {
+			at := times[i]
+			if i+1 < len(times) {
+				at += late * (times[i+1] - times[i])
+			}
+			l.BackTo(at)
+			if l.Now() != i || !(math.Abs(l.Time()-times[i]) < 1e-9*times[len(times)-1]) {
+				t.Fatalf("time %g: tick %d at %g, want %d at %g", at, l.Now(), l.Time(), i, times[i])
+			}
 		}
 	}
 }
@@ -181,13 +203,10 @@ func TestHistoryAddsUpToTheLedger(t *testing.T) {
 	for l.Tick() {
 	}
 	m := l.Moment(Window{-1, 1, 2})
-	far, flows := 0.0, m.Whole
-	for i, v := range flows.Far {
-		width := flows.BinTime
-		if i == len(flows.Far)-1 {
-			width = m.Time - flows.BinTime*float64(i)
-		}
-		far += v * width
+	far, begin := 0.0, 0.0
+	for i, end := range m.Whole.Ends {
+		far += m.Whole.Far[i] * (end - begin)
+		begin = end
 	}
 	// The finer steps carry the packet a little more exactly than the run's,
 	// and are set back on it at each step: the tolerance of the run, 1e-6.

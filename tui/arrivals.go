@@ -21,7 +21,7 @@ type arrivals struct {
 // the axis.
 func (a arrivals) flows() scenarios.Flows {
 	first := a.moment.First
-	if covered := float64(len(first.Far)) * first.BinTime; covered >= math.Min(a.end(), a.moment.Reached)*(1-1e-9) {
+	if n := len(first.Ends); n > 0 && first.Ends[n-1] >= math.Min(a.end(), a.moment.Reached)*(1-1e-9) {
 		return first
 	}
 	return a.moment.Whole
@@ -84,53 +84,43 @@ func (a arrivals) end() float64 {
 	return a.outlook.Event
 }
 
-// now is the number of bins up to the present.
-func (a arrivals) now() int {
-	f := a.flows()
-	if f.BinTime <= 0 {
-		return 0
-	}
-	return min(len(f.Far), int(math.Ceil(a.moment.Time/f.BinTime-1e-9)))
-}
-
 func (a arrivals) lane(l lane) {
 	head := l.Inside(0, 0, l.Wide, 1)
 	if l.High > 1 {
 		l.Box = l.Inside(0, 1, l.Wide, l.High-1)
 	}
 	l.Plot()
-	wide, high := l.Dots()
-	known := a.now()
-	s := scale{top: l.top, log: a.log}
-	for _, v := range l.flux {
-		s.top = math.Max(s.top, v)
-	}
-	if s.top <= 0 {
-		s.top = 1
-	}
 	a.mark(l, l.free, 4)
-	for x := range wide {
-		from, to := a.bins(x, wide)
-		level := 0
-		for i := from; i < min(to, known); i++ {
-			level = max(level, int(math.Round(s.part(l.flux[i])*float64(high))))
-		}
-		l.Fill(x, level, l.style)
-	}
+	a.fill(l)
 	a.mark(l, l.predicted, 1)
 	l.Box = head
 	a.caption(l)
 }
 
-// bins is the range of bins in a column of dots, at least one.
-func (a arrivals) bins(x, wide int) (from, to int) {
-	f := a.flows()
-	if f.BinTime <= 0 {
-		return 0, 0
+// fill draws the flow up to the present, the largest in each column of dots.
+func (a arrivals) fill(l lane) {
+	wide, high := l.Dots()
+	s := scale{top: l.top, log: a.log}
+	for _, v := range l.flux {
+		s.top = math.Max(s.top, v)
 	}
-	perDot := a.end() / f.BinTime / float64(wide)
-	from = int(float64(x) * perDot)
-	return from, max(from+1, int(float64(x+1)*perDot))
+	if s.top <= 0 {
+		return
+	}
+	ends, bin := a.flows().Ends, 0
+	for x := range wide {
+		from, to := a.end()*float64(x)/float64(wide), a.end()*float64(x+1)/float64(wide)
+		for bin > 0 && ends[bin-1] > from {
+			bin--
+		}
+		level := 0
+		for ; bin < len(ends) && (bin == 0 || ends[bin-1] < to); bin++ {
+			if ends[bin] > from && ends[bin] <= a.moment.Time*(1+1e-9) {
+				level = max(level, int(math.Round(s.part(l.flux[bin])*float64(high))))
+			}
+		}
+		l.Fill(x, level, l.style)
+	}
 }
 
 // mark draws a vertical line of every n-th dot at a time.

@@ -26,14 +26,14 @@ func Frames(ctx context.Context, w io.Writer, trial *scenarios.Trial, n int, siz
 			return ctx.Err()
 		}
 	}
+	end := live.Latest()
 	v := newView()
 	c := &canvas.Canvas{}
 	for i := range n {
-		at := live.Reached()
-		if n > 1 {
-			at = live.Reached() * i / (n - 1)
+		live.Back(live.Reached())
+		if i < n-1 {
+			live.BackTo(end * float64(i) / float64(n-1))
 		}
-		live.Back(at)
 		v.still(live, size).draw(c, size.Wide, size.High)
 		if _, err := fmt.Fprintf(w, "%s\n\f\n", c.String(canvas.Output{UTF8: utf8})); err != nil {
 			return err

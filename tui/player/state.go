@@ -148,11 +148,11 @@ const (
 )
 
 // secondsPerRun is how long what can be seen of a run lasts at the normal
-// pace. What comes after it, until next to nothing is left, passes in
-// secondsPerTail at any slower pace.
+// pace. What comes after it, until next to nothing is left, passes at least
+// tailPace times as fast.
 const (
-	secondsPerRun  = 24
-	secondsPerTail = 4
+	secondsPerRun = 24
+	tailPace      = 8
 )
 
 func (s *state) faster(n int) {
@@ -202,16 +202,17 @@ func (s *state) advance(now time.Time) {
 
 // ticksPerSecond is the present speed of the clock.
 func (s *state) ticksPerSecond() float64 {
-	chosen := math.Ldexp(float64(s.live.Event())/secondsPerRun, s.pace)
+	normal := math.Max(1, float64(s.live.Event())/secondsPerRun)
+	chosen := math.Ldexp(normal, s.pace)
 	if s.tail() {
-		return math.Max(chosen, float64(s.live.Expected()-s.live.Event())/secondsPerTail)
+		return math.Max(chosen, tailPace*normal)
 	}
 	return chosen
 }
 
 // tail reports whether there is nothing more to see, although the run is not
 // over.
-func (s *state) tail() bool { return s.live.Now() > s.live.Event() && !s.live.Ended() }
+func (s *state) tail() bool { return s.live.Time() > s.live.Outlook.Event && !s.live.Ended() }
 
 // publish posts a frame if anything is new.
 func (s *state) publish() {
