@@ -31,7 +31,7 @@ func (st *stretch) edge(upper bool) float64 {
 	return st.from
 }
 
-// beyond adds twice the integrals of a Gaussian tail with the integrands'
+// beyond adds eight times the integrals of a Gaussian tail with the integrands'
 // values at the edge, all being transmitted. Towards k = 0, where the window
 // ends at a fraction of a width, it adds the integrals down to 0, and for
 // those that go as 1/k as many powers of e again as the window has.
@@ -51,11 +51,20 @@ func (q *quadrature) beyond(st *stretch, x float64, row, out []float64) error {
 	case a.SpeedOut > 0:
 		t = math.Exp(logDensity - q.window.peak)
 	}
-	integrands(row, &a, math.Exp(logDensity), t)
+	g := math.Exp(logDensity)
+	integrands(row, &a, g, t)
+	if !zero {
+		// All may be reflected beyond, and a delay is never known to be less
+		// than that of a step, some 1/E.
+		step := 8 * s.near.Mass / (k * k)
+		row[sumR], row[sumSlowR] = g, g/a.SpeedIn
+		row[sumDelayR] = math.Abs(row[sumDelayR]) + g*step
+		row[sumDelayT] = math.Abs(row[sumDelayT]) + t*step
+	}
 	for j, f := range row {
 		switch {
 		case !zero:
-			out[j] += math.Abs(f) * 2 * p.Width * p.Width / math.Abs(k-p.K0)
+			out[j] += math.Abs(f) * 8 * p.Width * p.Width / math.Abs(k-p.K0)
 		case j == sumSlow || j == sumSlowR || j == sumDelayR:
 			out[j] += math.Abs(f) * k * -math.Log(leastFraction)
 		default:

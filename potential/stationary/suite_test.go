@@ -1,6 +1,7 @@
 package stationary
 
 import (
+	"context"
 	"math"
 	"math/cmplx"
 	"testing"
@@ -199,6 +200,38 @@ func TestCloneAgrees(t *testing.T) {
 		}
 		if a.T != b.T || a.T != c.T || a.R != b.R || a.Dwell != b.Dwell || a.Dwell != c.Dwell {
 			t.Fatal("a clone or a second call gives other numbers")
+		}
+	})
+}
+
+// TestAveragesOfAnything: for any structure T + R + A = 1 within the errors,
+// and asking for more moves no average by more than the errors said.
+func TestAveragesOfAnything(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		s := drawStructure(t, true)
+		v := New(s, rapid.Bool().Draw(t, "right"))
+		k0 := rapid.Float64Range(0.5, 3).Draw(t, "k0")
+		p := Spectrum{k0, k0 * rapid.Float64Range(0.01, 0.12).Draw(t, "width")}
+		rough, err := v.Average(context.Background(), p, Options{Relative: 1e-5})
+		if err != nil {
+			t.Fatal(err)
+		}
+		fine, err := v.Average(context.Background(), p, Options{Relative: 1e-11})
+		if err != nil {
+			t.Fatal(err)
+		}
+		within(t, "T+R+A", fine.Transmitted.Value+fine.Reflected.Value+fine.Lost.Value, 1,
+			fine.Transmitted.Error+fine.Reflected.Error+fine.Lost.Error+2e-15)
+		for what, pair := range map[string][2]Mean{
+			"T": {rough.Transmitted, fine.Transmitted}, "R": {rough.Reflected, fine.Reflected}, "A": {rough.Lost, fine.Lost},
+			"delay of t":    {rough.GroupDelayTransmitted, fine.GroupDelayTransmitted},
+			"delay of r":    {rough.GroupDelayReflected, fine.GroupDelayReflected},
+			"slowness in":   {rough.SlownessInTransmitted, fine.SlownessInTransmitted},
+			"slowness out":  {rough.SlownessOutTransmitted, fine.SlownessOutTransmitted},
+			"slowness of r": {rough.SlownessInReflected, fine.SlownessInReflected},
+			"slowness":      {rough.SlownessFree, fine.SlownessFree}, "dwell": {rough.Dwell, fine.Dwell},
+		} {
+			within(t, what, pair[0].Value, pair[1].Value, pair[0].Error+pair[1].Error)
 		}
 	})
 }
