@@ -109,7 +109,8 @@ func (m *Mesh) full(alpha, beta complex128) (a matrix, mass []complex128) {
 	return a, mass
 }
 
-// plainStep takes one step of a stepper the plain way and returns psi.
+// plainStep takes one step of a stepper the plain way, by the factors
+// -(1 + 2 Re(p)/(z-p)) of the approximant, and returns psi.
 func plainStep(s *Stepper) []complex128 {
 	psi := append([]complex128(nil), s.Psi()...)
 	alpha := complex(0, -s.Step)
@@ -125,7 +126,7 @@ func plainStep(s *Stepper) []complex128 {
 			a[wall][wall], b[wall] = 1, 0
 		}
 		for i, v := range a.solve(b) {
-			psi[i] += complex(2*real(pole), 0) * v
+			psi[i] = -psi[i] - complex(2*real(pole), 0)*v
 		}
 	}
 	return psi

@@ -1,39 +1,55 @@
 package propagate
 
-// factor is one factor 1 + 2 Re(p)/(z - p) of a time step, z = -i dt (H - E0),
-// ready to be applied: chi solves
+import "math/cmplx"
+
+// pole is one pole p of the approximant of exp(z), z = alpha (H - origin) with
+// alpha = -i dt. Its factor of the step is taken as
+//
+//	-(p/conj(p)) (z + conj(p))/(z - p) = 1 + weight z/(z - p),
+//	weight = -2 Re(p)/conj(p),
+//
+// which is 1 at z = 0; the constants p/conj(p) of all poles multiply to 1.
+type pole struct {
+	at, alpha complex128
+	origin    float64
+}
+
+func (p pole) weight() complex128 { return complex(-2*real(p.at), 0) / cmplx.Conj(p.at) }
+
+// beta is the shift with which z - p is alpha H - beta.
+func (p pole) beta() complex128 { return p.at + p.alpha*complex(p.origin, 0) }
+
+// factor is one factor of a time step, ready to be applied: chi solves
 //
 //	A chi = M psi,  A = -i dt (H - E0 M) - p M,
 //
-// and psi becomes psi + 2 Re(p) chi. The faces are left with a symmetric
-// tridiagonal system whose elimination is made once.
+// and psi becomes psi + weight (psi + p chi). The faces are left with a
+// symmetric tridiagonal system whose elimination is made once.
 type factor struct {
+	pole
 	mesh    *Mesh
 	kernels []kernel // one for each cell of the mesh
 	faces   tridiagonal
-	gain    float64 // 2 Re(p)
 }
 
-// newFactor prepares the factor of pole p; mirror says whether kernels may use
+// newFactor prepares the factor of a pole; mirror says whether kernels may use
 // the mirror symmetry of their cells.
-func newFactor(m *Mesh, dt, origin float64, pole complex128, mirror bool) *factor {
-	alpha := complex(0, -dt)
-	beta := pole + alpha*complex(origin, 0)
-	f := &factor{mesh: m, kernels: make([]kernel, len(m.cells)), gain: 2 * real(pole)}
+func newFactor(m *Mesh, p pole, mirror bool) *factor {
+	f := &factor{mesh: m, pole: p, kernels: make([]kernel, len(m.cells))}
 	for i := range m.cells {
-		f.kernels[i] = newKernel(&m.cells[i], alpha, beta, f.gain, mirror)
+		f.kernels[i] = newKernel(&m.cells[i], p, mirror)
 	}
-	f.eliminate(alpha)
+	f.eliminate()
 	return f
 }
 
 // eliminate factors the tridiagonal system of the faces between the walls at
 // the two ends, which hold psi = 0.
-func (f *factor) eliminate(alpha complex128) {
+func (f *factor) eliminate() {
 	m := f.mesh
 	diag, off := make([]complex128, len(m.faces)), make([]complex128, len(m.elements))
 	for i, s := range m.strength {
-		diag[i] = alpha * complex(s, 0)
+		diag[i] = f.alpha * complex(s, 0)
 	}
 	for i, e := range m.elements {
 		c := &f.kernels[e.cell].faces
@@ -68,7 +84,8 @@ func (f *factor) solve(psi wave, chi []complex128) {
 // absorbing element takes to lost.
 func (f *factor) update(psi wave, chi []complex128, lost []float64) {
 	m := f.mesh
-	gain := complex(f.gain, 0)
+	weight := f.weight()
+	x := weight * f.at
 	for i := range m.elements {
 		e := &m.elements[i]
 		k := &f.kernels[e.cell]
@@ -76,10 +93,10 @@ func (f *factor) update(psi wave, chi []complex128, lost []float64) {
 		if k.lossy != nil {
 			lost[e.layer] += k.absorbed(&m.cells[e.cell], c, chi[i], chi[i+1])
 		}
-		k.advance(c, gain*chi[i], gain*chi[i+1])
+		k.advance(c, x*chi[i], x*chi[i+1])
 	}
 	for i, v := range chi {
-		psi.face[i] += gain * v
+		psi.face[i] += weight * (psi.face[i] + f.at*v)
 	}
 }
 
@@ -102,5 +119,5 @@ func (f *factor) outflow(psi wave, chi []complex128, right bool) float64 {
 	}
 	v := chi[face]
 	q = q*v + k.faces.lr*other + passed - mass*psi.face[face]
-	return 2 * f.gain * (real(v)*real(q) + imag(v)*imag(q))
+	return 4 * real(f.at) * (real(v)*real(q) + imag(v)*imag(q))
 }

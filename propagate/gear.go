@@ -21,7 +21,7 @@ func (s *Stepper) shift(dt, origin float64) {
 	}
 	g := &gear{Step: dt, Origin: origin}
 	for _, p := range s.Pade.Poles {
-		g.factors = append(g.factors, newFactor(s.Mesh, dt, origin, p, s.mirror))
+		g.factors = append(g.factors, newFactor(s.Mesh, pole{p, complex(0, -dt), origin}, s.mirror))
 	}
 	s.gears = append(s.gears, g)
 	s.gear = g

@@ -6,10 +6,14 @@ package propagate
 // operations a node, with no dense matrix.
 //
 // With g_j = 1/(a lambda_j + b) and the couplings l_j, r_j of mode j to the
-// faces, the factor 1 + gain/(z - p) takes amplitude c_j to
+// faces, the factor 1 + weight z/(z - p) adds to amplitude c_j
 //
-//	turn_j c_j - left_j gain chi_left - right_j gain chi_right,
-//	turn_j = 1 + gain mu g_j,  left_j = a g_j l_j,  right_j = a g_j r_j.
+//	turn_j c_j - left_j x_left - right_j x_right,
+//	turn_j = weight alpha (kappa lambda_j + mu (u - E0)) g_j,
+//	left_j = a g_j l_j,  right_j = a g_j r_j,  x = weight p chi at the faces.
+//
+// What is added is small where E dt is small, so that the rounding of turn_j,
+// the same in every step, does not add up.
 type kernel struct {
 	turn        []complex128
 	left, right []complex128 // right is nil where the mirror symmetry is used
@@ -27,13 +31,13 @@ type lossy struct {
 	absorb float64      // 4 Re(p) dt loss: probability absorbed per norm of chi
 }
 
-// newKernel makes the kernel of alpha H - beta. Without mirror the element is
+// newKernel makes the kernel of the factor on a cell. Without mirror the element is
 // treated as if it had no symmetry, which costs half as much again.
-func newKernel(c *cell, alpha, beta complex128, gain float64, mirror bool) kernel {
+func newKernel(c *cell, p pole, mirror bool) kernel {
 	n := len(c.lambda)
 	k := kernel{
 		turn: make([]complex128, n), left: make([]complex128, n), even: c.even,
-		mu: c.mu, faces: c.condense(alpha, beta),
+		mu: c.mu, faces: c.condense(p.alpha, p.beta()),
 		massLeft:  c.mu * complex(c.mass[0], 0),
 		massRight: c.mu * complex(c.mass[c.order], 0),
 	}
@@ -41,12 +45,13 @@ func newKernel(c *cell, alpha, beta complex128, gain float64, mirror bool) kerne
 		k.right = make([]complex128, n)
 	}
 	if c.loss != 0 {
-		k.lossy = &lossy{own: make([]complex128, n), absorb: 2 * gain * c.loss * -imag(alpha)}
+		k.lossy = &lossy{own: make([]complex128, n), absorb: 4 * real(p.at) * c.loss * -imag(p.alpha)}
 	}
-	a, b := c.shift(alpha, beta)
+	a, b := c.shift(p.alpha, p.beta())
+	_, own := c.shift(p.alpha, p.alpha*complex(p.origin, 0)) // b without the pole
 	for j, lambda := range c.lambda {
 		g := reciprocal(a*complex(lambda, 0) + b)
-		k.turn[j] = 1 + complex(gain, 0)*c.mu*g
+		k.turn[j] = p.weight() * (a*complex(lambda, 0) + own) * g
 		k.left[j] = a * g * complex(c.couple[0][j], 0)
 		if k.right != nil {
 			k.right[j] = a * g * complex(c.couple[1][j], 0)
@@ -80,12 +85,12 @@ func dot(a, c []complex128) complex128 {
 	return complex(re, im)
 }
 
-// advance applies the factor to the amplitudes; left and right are gain*chi at
-// the faces.
+// advance applies the factor to the amplitudes; left and right are x at the
+// faces.
 func (k *kernel) advance(c []complex128, left, right complex128) {
 	if k.right != nil {
 		for j, v := range c {
-			c[j] = k.turn[j]*v - k.left[j]*left - k.right[j]*right
+			c[j] = v + (k.turn[j]*v - k.left[j]*left - k.right[j]*right)
 		}
 		return
 	}
@@ -93,15 +98,15 @@ func (k *kernel) advance(c []complex128, left, right complex128) {
 	shear(c[k.even:], k.turn[k.even:], k.left[k.even:], left-right)
 }
 
-// shear replaces c_j by t_j c_j - d_j x.
+// shear adds t_j c_j - d_j x to c_j.
 func shear(c, t, d []complex128, x complex128) {
 	t, d = t[:len(c)], d[:len(c)]
 	xr, xi := real(x), imag(x)
 	for j, v := range c {
 		tr, ti, dr, di := real(t[j]), imag(t[j]), real(d[j]), imag(d[j])
 		c[j] = complex(
-			tr*real(v)-ti*imag(v)-(dr*xr-di*xi),
-			tr*imag(v)+ti*real(v)-(dr*xi+di*xr),
+			real(v)+(tr*real(v)-ti*imag(v)-(dr*xr-di*xi)),
+			imag(v)+(tr*imag(v)+ti*real(v)-(dr*xi+di*xr)),
 		)
 	}
 }
