@@ -16,11 +16,6 @@ type Packet struct {
 // Fill writes the packet on the nodes of the mesh (len(psi) = m.Nodes()), zero
 // inside the edges and at their faces, scaled so that the mesh's own norm of
 // it is 1. It is an error if no node lies inside the packet.
-//
-// The values are those of the L2 projection, psi_i = int psi0 phi_i dx / M_i
-// with the cardinal functions phi_i, integrated by a rule of twice the order:
-// sampling psi0 at the nodes would fold part of it into waves that are slower
-// or move the other way.
 func (p Packet) Fill(m *Mesh, psi []complex128) error {
 	w := newWave(m)
 	if err := p.fill(m, w, psi); err != nil {
@@ -32,23 +27,11 @@ func (p Packet) Fill(m *Mesh, psi []complex128) error {
 
 // fill is Fill in amplitudes; psi is scratch.
 func (p Packet) fill(m *Mesh, w wave, psi []complex128) error {
+	from, to := m.RealNodes()
 	clear(psi)
-	finer := map[int]*refinement{}
-	for i := m.real0; i < m.real1; i++ {
-		e := m.elements[i]
-		c := &m.cells[e.cell]
-		if finer[c.order] == nil {
-			finer[c.order] = newRefinement(c.rule)
-		}
-		p.integrate(finer[c.order], m.X[e.first], m.X[e.first+c.order], psi[e.first:])
-		for n := 1; n < c.order; n++ {
-			psi[e.first+n] /= c.mu * complex(c.mass[n], 0)
-		}
+	for i := from + 1; i < to-1; i++ {
+		psi[i] = p.at(m.X[i])
 	}
-	for f := m.real0 + 1; f < m.real1; f++ {
-		psi[m.faces[f]] /= m.faceMass[f]
-	}
-	psi[m.faces[m.real0]], psi[m.faces[m.real1]] = 0, 0
 	m.project(psi, w)
 	norm := m.norm(m.real0, m.real1, w)
 	if !(norm > 0) {
@@ -59,6 +42,26 @@ func (p Packet) fill(m *Mesh, w wave, psi []complex128) error {
 		w.all[i] *= scale
 	}
 	return nil
+}
+
+// SamplingError is the probability of what the mesh makes of the packet beyond
+// the packet itself, the integral of |interpolant - psi0|^2 over the integral
+// of |psi0|^2, by a rule of twice the order. It starts out as waves of the
+// grid, at energies far above the packet's.
+func (p Packet) SamplingError(m *Mesh) float64 {
+	finer := map[int]*refinement{}
+	wrong, whole := 0.0, 0.0
+	for i := m.real0; i < m.real1; i++ {
+		e := m.elements[i]
+		r := m.cells[e.cell].rule
+		if finer[r.order] == nil {
+			finer[r.order] = newRefinement(r)
+		}
+		dw, dv := p.interpolationError(finer[r.order], m.X[e.first:e.first+r.order+1])
+		wrong += dw
+		whole += dv
+	}
+	return wrong / whole
 }
 
 // refinement is a rule of twice the order of an element's and the element's
@@ -96,18 +99,24 @@ func cardinals(nodes, weights []float64, x float64) []float64 {
 	return out
 }
 
-// integrate adds to psi the integrals of the packet times the cardinal
-// functions of the element [from, to].
-func (p Packet) integrate(r *refinement, from, to float64, psi []complex128) {
-	for q, y := range r.nodes {
-		v := p.at(from+(to-from)*y) * complex((to-from)*r.weights[q], 0)
-		if v == 0 {
-			continue
-		}
-		for i, c := range r.cardinal[q] {
-			psi[i] += v * complex(c, 0)
-		}
+// interpolationError returns the integrals of |interpolant - psi0|^2 and of
+// |psi0|^2 over the element with the given nodes.
+func (p Packet) interpolationError(r *refinement, x []float64) (wrong, whole float64) {
+	from, length := x[0], x[len(x)-1]-x[0]
+	nodal := make([]complex128, len(x))
+	for i := range x {
+		nodal[i] = p.at(x[i])
 	}
+	for q, y := range r.nodes {
+		v := p.at(from + length*y)
+		d := -v
+		for i, c := range r.cardinal[q] {
+			d += nodal[i] * complex(c, 0)
+		}
+		wrong += length * r.weights[q] * square(d)
+		whole += length * r.weights[q] * square(v)
+	}
+	return wrong, whole
 }
 
 // at is the packet at x, not normalised.
