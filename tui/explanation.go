@@ -76,15 +76,23 @@ func (e explanation) exit() bool {
 	return false
 }
 
-// measured is by how much the packet itself is late, so far.
+// measured is by how much the packet itself is late, once next to all of the
+// part has arrived: when its group delay is given.
 func (e explanation) measured(s scenarios.Shift) *float64 {
+	var arrival, delay *float64
 	for _, q := range e.result.Quantities {
-		if q.Name == "arrival_"+s.Part && q.Packet != nil {
-			v := *q.Packet - s.Free
-			return &v
+		switch q.Name {
+		case "arrival_" + s.Part:
+			arrival = q.Packet
+		case "group_delay_" + s.Part:
+			delay = q.Packet
 		}
 	}
-	return nil
+	if arrival == nil || delay == nil {
+		return nil
+	}
+	v := *arrival - s.Free
+	return &v
 }
 
 // format has no digit below the error of the shifts.

@@ -2,6 +2,7 @@ package tui
 
 import (
 	"fmt"
+	"math"
 	"strings"
 	"unicode/utf8"
 
@@ -107,7 +108,7 @@ func (s screen) pace() string {
 // oneLine is what is left of a very small screen.
 func (s screen) oneLine(c *canvas.Canvas) {
 	l := s.frame.Moment.Ledger
-	text := fmt.Sprintf("%s %s R %.4f T %.4f", s.state(), s.clock(), l.Reflected, l.Transmitted)
+	text := fmt.Sprintf("%s R %.4f T %.4f %s", s.state(), math.Max(0, l.Reflected), math.Max(0, l.Transmitted), s.clock())
 	c.Text(0, 0, canvas.Plain, cut(text, c.W))
 }
 

@@ -23,6 +23,7 @@ type tally struct {
 // share is a part of the bar.
 type share struct {
 	name  string
+	brief string
 	value float64
 	style canvas.Style
 	fill  uint8 // which dots of a column of four, from the top
@@ -34,11 +35,11 @@ func (t tally) shares() []share {
 	if t.side == scenarios.FromRight {
 		back, on = canvas.Right, canvas.Left
 	}
-	out := []share{{"reflected", t.ledger.Reflected, back, 0b1111}}
+	out := []share{{"reflected", "refl.", t.ledger.Reflected, back, 0b1111}}
 	if t.lossy {
-		out = append(out, share{"lost", t.ledger.Lost, canvas.Faint, 0b0101})
+		out = append(out, share{"lost", "lost", t.ledger.Lost, canvas.Faint, 0b0101})
 	}
-	return append(out, share{"inside", t.ledger.Trapped, canvas.Still, 0b0010}, share{"transmitted", t.ledger.Transmitted, on, 0b1111})
+	return append(out, share{"inside", "in", t.ledger.Trapped, canvas.Still, 0b0010}, share{"transmitted", "trans.", t.ledger.Transmitted, on, 0b1111})
 }
 
 func (t tally) draw() {
@@ -89,27 +90,38 @@ func (t tally) marks(bar canvas.Box) {
 	}
 }
 
-// numbers stand in equal parts of the second line, in the order of the bar.
+// longest is the length of the longest name.
+const longest = len("transmitted")
+
+// numbers stand in equal parts of the second line, in the order of the bar,
+// with as many digits and letters as there is room for.
 func (t tally) numbers(shares []share) {
-	digits := 8
-	if t.Wide < 22*len(shares) {
+	room := t.Wide/len(shares) - 1
+	digits, brief := 8, false
+	if room < longest+1+digits+2 {
 		digits = 4
+	}
+	if room < longest+1+digits+2 {
+		digits, brief = 3, true
 	}
 	for i, s := range shares {
 		at := i
 		if t.side == scenarios.FromRight {
 			at = len(shares) - 1 - i
 		}
-		text := fmt.Sprintf("%s %.*f", s.name, digits, math.Max(0, s.value))
-		b := t.Inside(at*t.Wide/len(shares), 1, t.Wide/len(shares)-1, 1)
-		switch {
-		case at == 0:
-			b.Text(0, 0, s.style, cut(text, b.Wide))
-		case at == len(shares)-1:
-			b = t.Inside(at*t.Wide/len(shares), 1, t.Wide, 1)
-			b.TextRight(t.Wide-at*t.Wide/len(shares), 0, s.style, cut(text, t.Wide))
-		default:
-			b.Text(max(0, (b.Wide-len(text))/2), 0, s.style, cut(text, b.Wide))
+		name := s.name
+		if brief {
+			name = s.brief
 		}
+		text := cut(fmt.Sprintf("%s %.*f", name, digits, math.Max(0, s.value)), room)
+		x := at * t.Wide / len(shares)
+		switch at {
+		case 0:
+		case len(shares) - 1:
+			x = t.Wide - len(text)
+		default:
+			x += max(0, (room-len(text))/2)
+		}
+		t.Text(x, 1, s.style, text)
 	}
 }
