@@ -56,9 +56,13 @@ func (p *progressLine) show(now scenarios.Progress) {
 
 // progressText is what the line says.
 func progressText(now scenarios.Progress) string {
+	left := fmt.Sprintf("about %s left", duration(now.Left))
+	if now.Fraction >= 1 {
+		left = "waiting for the rest"
+	}
 	l := now.Ledger
-	return fmt.Sprintf("%3.0f %%, about %s left; reflected %.4f, transmitted %.4f, inside %.4f",
-		100*now.Fraction, duration(now.Left), l.Reflected, l.Transmitted, l.Trapped)
+	return fmt.Sprintf("%3.0f %%, %s; reflected %.4f, transmitted %.4f, inside %s",
+		100*now.Fraction, left, l.Reflected, l.Transmitted, brief(l.Trapped))
 }
 
 // duration reads well for a person who waits.

@@ -36,7 +36,7 @@ func report(r *scenarios.Result) string {
 func quantityTable(r *scenarios.Result) string {
 	const columns, narrowest = 80, 10
 	for room := 17; ; room-- {
-		t := table{{timesIn(r), "plane wave", "average", "packet", "off by", "budget", ""}}
+		t := table{{timesIn(r.Units.Time), "plane wave", "average", "packet", "off by", "budget", ""}}
 		for _, q := range r.Quantities {
 			t = append(t, quantityRow(q, room))
 		}
@@ -47,11 +47,11 @@ func quantityTable(r *scenarios.Result) string {
 }
 
 // timesIn heads the column of names with the unit of the times.
-func timesIn(r *scenarios.Result) string {
-	if r.Units.Time == "" {
+func timesIn(unit string) string {
+	if unit == "" {
 		return ""
 	}
-	return "times in " + r.Units.Time
+	return "times in " + unit
 }
 
 // quantityRow shows the packet's value with the digits that its budget

@@ -97,22 +97,31 @@ func caseText(list []published.Outcome) string {
 	if list[0].FromMemory {
 		source += " (from memory)"
 	}
-	t := table{{"", "", "expected", "found", "error", "allowed", ""}}
+	t := table{{timesHeading(list), "", "expected", "found", "error", "allowed", ""}}
 	for _, o := range list {
 		t = append(t, outcomeRow(o))
 	}
 	return list[0].Case + "\n" + paragraph("source", source) + t.String() + "\n"
 }
 
-func outcomeRow(o published.Outcome) []string {
-	name := o.Quantity
-	if o.Unit != "" {
-		name += ", " + o.Unit
+// timesHeading names the unit of the times among the outcomes, if there is one.
+func timesHeading(list []published.Outcome) string {
+	for _, o := range list {
+		if o.Unit != "" {
+			return timesIn(o.Unit)
+		}
 	}
-	row := []string{name, fmt.Sprintf("%-10s", o.Road), "", "-", "-", brief(o.Allowed), "FAIL"}
-	row[2] = known(o.Expected, o.Allowed, 13)
-	if o.Found != nil {
-		row[3], row[4] = known(*o.Found, o.Allowed, 13), brief(*o.Error)
+	return ""
+}
+
+func outcomeRow(o published.Outcome) []string {
+	const room = 11
+	row := []string{
+		o.Quantity, fmt.Sprintf("%-10s", o.Road), cell(&o.Expected, o.Allowed, room), cell(o.Found, o.Allowed, room),
+		"-", brief(o.Allowed), "FAIL",
+	}
+	if o.Error != nil {
+		row[4] = brief(*o.Error)
 	}
 	if o.Pass {
 		row[6] = "pass"
