@@ -171,14 +171,14 @@ func (d *divider) curved(g potential.Segment, i int, from, to float64, depth int
 	d.curved(g, i, mid, to, depth+1)
 }
 
-// resolved reports whether the upper half of the Legendre coefficients of p on
+// resolved reports whether the upper quarter of the Legendre coefficients of p on
 // [from, to] sum to less than tol.
 func (d *divider) resolved(p potential.Profile, from, to, tol float64) bool {
-	if n := p.Degree(); n >= 0 && n <= d.rule.order/2 {
+	if n := p.Degree(); n >= 0 && n <= 3*d.rule.order/4 {
 		return true
 	}
 	tail := 0.0
-	for n := d.rule.order/2 + 1; n < d.rule.order; n++ {
+	for n := 3*d.rule.order/4 + 1; n < d.rule.order; n++ {
 		c := 0.0
 		for q, y := range d.rule.nodes {
 			value, _ := legendreAt(n, 2*y-1)
