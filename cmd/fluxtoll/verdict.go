@@ -2,6 +2,7 @@ package main
 
 import (
 	"fmt"
+	"strconv"
 
 	"fluxtoll/scenarios"
 )
@@ -31,7 +32,7 @@ func disagreement(r *scenarios.Result) string {
 			worst, most = q.Name, max(ratio, -ratio)
 		}
 	}
-	return fmt.Sprintf("%s differs by %s times its budget", worst, brief(most))
+	return fmt.Sprintf("%s differs by %s times its budget", worst, ratioText(most))
 }
 
 // excess says what kept the budget above the tolerance.
@@ -49,8 +50,11 @@ func excess(r *scenarios.Result) string {
 		return "the averages were not accurate enough"
 	}
 	return fmt.Sprintf("the budget of %s is %s times what the tolerance %s allows; the run ended by %s",
-		worst, brief(most), short(r.Tolerance), ending(r.Ended))
+		worst, ratioText(most), short(r.Tolerance), ending(r.Ended))
 }
+
+// ratioText writes a ratio with three digits, so that 1.03 is more than 1.
+func ratioText(v float64) string { return plainExponent(strconv.FormatFloat(v, 'g', 3, 64)) }
 
 // ending words why the packet road ended.
 func ending(ended string) string {
