@@ -26,12 +26,14 @@ func (t terms) total() errorSet {
 	return t.space.plus(t.time).plus(t.edges).plus(t.packet).plus(t.tail).plus(t.average).plus(t.rounding)
 }
 
-// terms computes every term of the budget from the run's own operators.
+// terms computes every term of the budget from the run's own operators. Space
+// counts twice: scattering on the elements is off, and so are the energies
+// that the elements give the packet's wave numbers.
 func (t *Trial) terms() terms {
 	return terms{
-		space: t.Plan.grids.space, edges: t.Plan.grids.edges,
+		space: t.Plan.grids.space.times(2), edges: t.Plan.grids.edges,
 		time: t.timeTerm(), packet: t.Plan.start0,
-		tail:    t.tail(t.Run.Ledger(), t.Run.Remaining, t.Run.Lifetime),
+		tail:    t.tail(t.Run.Ledger(), t.Run.Remaining, t.Run.Lifetime).plus(t.astray()),
 		average: t.averageTerm(), rounding: t.roundingTerm(),
 	}
 }
@@ -52,6 +54,9 @@ func timedMeans(a *stationary.Averages, g geometry) partMeans {
 	}
 	return m
 }
+
+// phaseSafety covers what the phase error does beyond first order.
+const phaseSafety = 1.5
 
 // timeTerm is the spectrum average of the step's phase error times each time;
 // the aliasing of a flow sampled once a step, its spectrum at 2 pi/dt; and one
@@ -78,7 +83,9 @@ func (t *Trial) timeTerm() errorSet {
 	}
 	front := math.Erfc(p.start/t.Scenario.Packet.Length/math.Sqrt2) / 2
 	alias := t.aliasing() + front*p.TimeStep
-	return e.plus(t.perPart(alias, alias))
+	grown := t.slow.times(lengthened)
+	grown.transmitted, grown.reflected, grown.lost = 0, 0, 0 // no step misplaces those
+	return e.times(phaseSafety).plus(grown).plus(t.perPart(alias, alias))
 }
 
 // aliasing is dt times the weight of the packet's flow at the frequency
@@ -106,20 +113,41 @@ func (t *Trial) perPart(time, dwell float64) errorSet {
 }
 
 // tail charges what remains between the planes to every part. It will come
-// later than now, by about the time in which it decays.
+// later than now, by about the time in which it decays. As much of it as was
+// astray from the start is left out: it may never leave.
 func (t *Trial) tail(l *propagate.Ledger, remaining, lifetime float64) errorSet {
 	if math.IsInf(lifetime, 1) {
 		lifetime = l.Time
 	}
+	leaving := math.Max(0, remaining-2*t.stray())
 	m := t.means()
-	late := func(mean float64) float64 { return remaining * math.Abs(l.Time+lifetime-mean) }
+	late := leaving * math.Abs(l.Time+lifetime-math.Min(m.timeTransmitted, m.timeReflected))
 	inLayers := 0.0
 	for _, p := range l.InLayer {
 		inLayers += p
 	}
-	e := t.perPart(late(math.Min(m.timeTransmitted, m.timeReflected)),
-		inLayers*lifetime+remaining*t.Averages.Dwell.Value)
-	e.transmitted, e.reflected, e.lost = remaining, remaining, remaining
+	e := t.perPart(late, math.Min(inLayers, leaving)*lifetime+leaving*t.Averages.Dwell.Value)
+	e.transmitted, e.reflected, e.lost = leaving, leaving, leaving
+	return e
+}
+
+// stray is the probability that at the start was no part of the incoming
+// packet: its front within the structure, of which a bound state may keep
+// some, and the waves of the grid that sampling it adds.
+func (t *Trial) stray() float64 {
+	front := math.Erfc(t.Plan.start/t.Scenario.Packet.Length/math.Sqrt2) / 2
+	return front + t.Plan.sampling
+}
+
+// astray charges what is left of it now, with the whole run as its delay.
+func (t *Trial) astray() errorSet {
+	left := math.Min(t.Run.Remaining, 2*t.stray())
+	time := left * t.Run.Ledger().Time
+	e := t.perPart(time, time)
+	e.transmitted, e.reflected, e.lost = left, left, left
+	if t.Scenario.Structure.Width() == 0 {
+		e.dwell = 0
+	}
 	return e
 }
 

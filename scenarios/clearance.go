@@ -21,7 +21,7 @@ func (p *planner) startError(g geometry) errorSet {
 	front := p.cutError(g, g.start)
 	back := p.cutError(g, g.behind-g.start)
 	beyond := func(d float64) float64 { return math.Erfc(d/p.scenario.Packet.Length/math.Sqrt2) / 2 }
-	total := front.plus(front).plus(back).plus(p.mismatch(g))
+	total := front.times(2).plus(back).plus(p.mismatch(g))
 	return total.plus(p.misplaced(g, wrongWay(p.scenario.Packet)+beyond(g.start)+beyond(g.near-g.start)))
 }
 
@@ -31,7 +31,7 @@ func (p *planner) startError(g geometry) errorSet {
 // that of the front, exp(-d^2/(4 length^2)); the factors bound what was
 // measured on wells, barriers and point potentials at the longest step.
 func (p *planner) mismatch(g geometry) errorSet {
-	const inLayers, atPlanes = 0.2, 1e-3
+	const inLayers, atPlanes = 0.5, 1e-3
 	d := g.start / p.scenario.Packet.Length
 	front, m := math.Exp(-d*d/4), p.means(g)
 	e := errorSet{dwell: inLayers * front * p.averages.Dwell.Value}

@@ -22,6 +22,12 @@ func (e errorSet) plus(o errorSet) errorSet {
 	}
 }
 
+func (e errorSet) times(f float64) errorSet {
+	return errorSet{
+		f * e.transmitted, f * e.reflected, f * e.lost, f * e.arrivalTransmitted, f * e.arrivalReflected, f * e.dwell,
+	}
+}
+
 // gridError is what the elements, and what the edges, do to the averages: the
 // spectrum average of the absolute difference between scattering on the mesh
 // and the exact amplitudes. No sign is lost by luck.

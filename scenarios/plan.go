@@ -22,10 +22,13 @@ type Plan struct {
 	Expected  float64 // time at which the run is expected to end
 	Mesh      *propagate.Mesh
 
-	samples []sample // merged: for what costs a solve each
-	all     []sample
-	grids   gridError
-	start0  errorSet // what the start does to the averages: the packet term
+	k0, length float64 // of the packet
+
+	samples  []sample // merged: for what costs a solve each
+	all      []sample
+	grids    gridError
+	start0   errorSet // what the start does to the averages: the packet term
+	sampling float64  // probability of what the mesh adds to the packet at the start
 }
 
 // LimitError says that a run was refused because it would exceed a limit.
@@ -69,13 +72,14 @@ type planner struct {
 // too large.
 func newPlan(s *Scenario, a *stationary.Averages, forced Forced) (*Plan, error) {
 	forced.Limits = forced.orDefault()
-	p := &planner{Plan: &Plan{}, scenario: s, forced: forced, averages: a}
+	p := &planner{Plan: &Plan{k0: s.Packet.K0, length: s.Packet.Length}, scenario: s, forced: forced, averages: a}
 	p.near, p.far = s.leads()
 	p.spectrum()
 	p.positions()
 	if err := p.grid(); err != nil {
 		return nil, err
 	}
+	p.start0 = p.start0.plus(p.misplaced(p.geometry, p.sampling))
 	if err := p.time(); err != nil {
 		return nil, err
 	}
@@ -98,7 +102,7 @@ func (p *planner) spectrum() {
 func (p *planner) grid() error {
 	p.Order, p.Phase = 12, 8
 	if p.scenario.Tolerance < 1e-8 {
-		p.Order, p.Phase = 16, 9
+		p.Phase = 6.5
 	}
 	if p.forced.Order > 0 {
 		p.Order = p.forced.Order
@@ -114,9 +118,12 @@ func (p *planner) grid() error {
 			return err
 		}
 		grids := compareGrid(mesh, p.geometry, p.samples)
-		worst := grids.space.of(p.scenario, p.averages, p.means(p.geometry))
+		sampling := p.packet().SamplingError(mesh)
+		m := p.means(p.geometry)
+		worst := math.Max(grids.space.of(p.scenario, p.averages, m),
+			p.misplaced(p.geometry, sampling).of(p.scenario, p.averages, m))
 		if worst < best {
-			best, p.Mesh, p.grids = worst, mesh, grids
+			best, p.Mesh, p.grids, p.sampling = worst, mesh, grids, sampling
 		}
 		if p.forced.Element > 0 || best <= shareSpace || worst > best {
 			break
@@ -126,11 +133,29 @@ func (p *planner) grid() error {
 	return nil
 }
 
+// packet is the packet as the packet road takes it.
+func (p *Plan) packet() propagate.Packet {
+	k0 := p.k0
+	if p.side == FromRight {
+		k0 = -k0
+	}
+	return propagate.Packet{Centre: p.at(p.start), Length: p.length, K0: k0}
+}
+
 // mesh builds the mesh for the present order and phase.
 func (p *planner) mesh() (*propagate.Mesh, error) {
 	limit := math.Max(shareEdges*p.scenario.Tolerance/4, 1e-13)
-	nearEdge := p.edge(p.near, limit, func(s sample) float64 { return s.Reflection / p.averages.Reflected.Value })
-	farEdge := p.edge(p.far, limit, func(s sample) float64 { return s.Transmission / p.averages.Transmitted.Value })
+	m := p.means(p.geometry)
+	nearEdge := p.edge(p.near, limit, func(s sample) float64 { return ratio(s.Reflection, m.reflected) })
+	farEdge := p.edge(p.far, limit, func(s sample) float64 {
+		// What comes back from the far edge comes late, and most of it ends as
+		// reflected.
+		share := ratio(s.Transmission, m.transmitted)
+		if m.timeReflected > 0 && s.SpeedOut > 0 {
+			share += s.Transmission / m.reflected * p.geometry.far / s.SpeedOut / m.timeReflected
+		}
+		return share
+	})
 	if p.side == FromRight {
 		nearEdge, farEdge = farEdge, nearEdge
 	}

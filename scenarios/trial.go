@@ -23,7 +23,8 @@ type Trial struct {
 	Refused   error                 // why it was refused: a *LimitError
 	started   time.Time
 	forced    Forced
-	unsettled error // the averages' own complaint, if any
+	unsettled error    // the averages' own complaint, if any
+	slow      errorSet // the tail when the step was first allowed to grow
 }
 
 // Prepare computes the plane-wave and average columns and plans the packet
@@ -62,12 +63,7 @@ func (t *Trial) plan() error {
 		return err
 	}
 	p := t.Plan
-	k0 := t.Scenario.Packet.K0
-	if p.side == FromRight {
-		k0 = -k0
-	}
-	packet := propagate.Packet{Centre: p.at(p.start), Length: t.Scenario.Packet.Length, K0: k0}
-	stepper, err := propagate.NewStepper(p.Mesh, p.Pade, p.TimeStep, p.Origin, packet)
+	stepper, err := propagate.NewStepper(p.Mesh, p.Pade, p.TimeStep, p.Origin, p.packet())
 	if err != nil {
 		return err
 	}
@@ -84,6 +80,9 @@ func (t *Trial) ending() propagate.Ending {
 			return tail.of(t.Scenario, t.Averages, t.means()) <= shareTail
 		},
 	}
+	if t.forced.TimeStep == 0 {
+		e.Slow = t.mayLengthen
+	}
 	if t.forced.StopTime > 0 {
 		e.Time = t.forced.StopTime
 		settled := e.Settled
@@ -92,6 +91,26 @@ func (t *Trial) ending() propagate.Ending {
 		}
 	}
 	return e
+}
+
+// Once the tail is within slowFrom times its tolerance the step may grow. Of
+// what remains then, a part of at most lengthened has energies so far off that
+// longer steps misplace it in time.
+const (
+	slowFrom   = 10
+	lengthened = 5e-3
+)
+
+// mayLengthen reports whether what remains is little enough for longer steps.
+func (t *Trial) mayLengthen(l *propagate.Ledger, remaining, lifetime float64) bool {
+	tail := t.tail(l, remaining, lifetime)
+	if tail.of(t.Scenario, t.Averages, t.means()) > slowFrom {
+		return false
+	}
+	if t.slow == (errorSet{}) {
+		t.slow = tail
+	}
+	return true
 }
 
 // Finish runs the packet road to its end, telling progress now and then, and
