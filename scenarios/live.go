@@ -24,10 +24,25 @@ type Live struct {
 	latest  float64
 	long    int // step after which a tick is a step; MaxInt until that is known
 	status  propagate.Status
+	end     end
 	past    snapshots
 	history history
 	sampler *propagate.Sampler
 	profile profile
+}
+
+// end is the step at which the run ended, and why.
+type end struct {
+	step   int
+	status propagate.Status // Running: not yet known
+}
+
+// at is the status at a step.
+func (e end) at(step int) propagate.Status {
+	if step == e.step {
+		return e.status
+	}
+	return propagate.Running
 }
 
 // The clock is made so that what there is to see lasts about this many ticks,
@@ -158,6 +173,9 @@ func (l *Live) step() {
 	run := l.Trial.Run
 	l.status = run.Next()
 	l.past.keep(run.Ledger().Steps, run)
+	if l.status != propagate.Running {
+		l.end = end{run.Ledger().Steps, l.status}
+	}
 	if run.Step != l.Trial.Plan.TimeStep || run.Ledger().Time*l.Trial.Scenario.Scale.Time > finest*l.Outlook.Event {
 		l.long = min(l.long, run.Ledger().Steps)
 	}
@@ -173,11 +191,11 @@ func (l *Live) Back(tick int) {
 	step, rest := l.stepOf(tick)
 	if here := l.Trial.Run.Ledger().Steps; step < here || l.past.nearest(step) > here {
 		l.past.restore(step, l.Trial.Run)
-		l.status = propagate.Running
 	}
 	for l.Trial.Run.Ledger().Steps < step {
-		l.status = l.Trial.Run.Next()
+		l.Trial.Run.Next()
 	}
+	l.status = l.end.at(step)
 	l.align()
 	for range rest {
 		l.between.Run.Advance()

@@ -68,6 +68,11 @@ func TestWatchedRunEqualsUnwatched(t *testing.T) {
 		if got := document(t, l.Result()); got != want {
 			t.Errorf("%s: watched\n%s\nunwatched\n%s", name, got, want)
 		}
+		l.Back(0)
+		l.Back(l.Reached())
+		if got := document(t, l.Result()); got != want {
+			t.Errorf("%s: back at the end\n%s\nunwatched\n%s", name, got, want)
+		}
 		l.Back(l.Reached() / 2)
 		for l.Tick() {
 		}
