@@ -14,7 +14,7 @@ type EdgeGoal struct{ Energy, Weight float64 }
 // Edges from leastEdge to mostEdge elements are tried.
 const (
 	leastEdge = 4
-	mostEdge  = 24
+	mostEdge  = 40
 )
 
 // ChooseEdge returns the shortest edge for which the weighted sum of
@@ -27,7 +27,7 @@ func ChooseEdge(lead potential.Lead, order int, goals []EdgeGoal, limit float64)
 	unit := shortestWave(lead, goals)
 	var trials []*edgeTrial
 	for _, first := range []float64{2, 3, 4.5, 6} {
-		for _, growth := range []float64{1.3, 1.5, 1.7} {
+		for _, growth := range []float64{1.3, 1.5, 1.7, 2.1} {
 			e := Edge{First: first * unit, Growth: growth, Angle: EdgeAngle}
 			trials = append(trials, newEdgeTrial(e, uniform, lead, goals))
 		}
