@@ -35,7 +35,7 @@ func (p Packet) average(f func(k float64) float64) float64 {
 func sentBack(t *testing.T, s setup, time float64) float64 {
 	t.Helper()
 	large := s
-	large.extent.Right += 300
+	large.extent.Right += 300 + 10*s.packet.Length
 	here, there := s.stepper(t), large.stepper(t)
 	advance(here, time)
 	advance(there, time)

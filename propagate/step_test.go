@@ -28,8 +28,8 @@ func compareStep(t testing.TB, s setup) {
 		for range 3 {
 			want := plainStep(fast)
 			fast.Advance()
-			// The full elimination without scaling loses about three digits.
-			near(t, "distance from the plain step", distance(fast.Psi(), want), 0, 2e-12)
+			// Rounding of 1/h for the thinnest layers, h = 0.01, at dt up to 3.
+			near(t, "distance from the plain step", distance(fast.Psi(), want), 0, 5e-11)
 		}
 	}
 }
