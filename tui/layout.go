@@ -69,11 +69,12 @@ func arrange(w, h, rows int, want chosen, editing bool) layout {
 	return l
 }
 
-// lowerRows is the height of the lower row: two fifths of what there is, but
-// all that the numbers need if the stage keeps at least eight lines.
+// lowerRows is the height of the lower row: two fifths of what there is; all
+// that the numbers need if the stage keeps nine lines; and some more for
+// explaining them in words if the stage keeps nearly half.
 func lowerRows(room, rows int) int {
-	const stageKeeps = 9
-	n := max(room*2/5, min(rows, room-stageKeeps))
+	const stageKeeps, words = 9, 6
+	n := max(room*2/5, min(rows, room-stageKeeps), min(rows+words, room*11/20))
 	if n < lowerLeast || room-n < leastStage {
 		return 0
 	}

@@ -2,7 +2,6 @@ package tui
 
 import (
 	"context"
-	"errors"
 	"fmt"
 	"os"
 	"os/signal"
@@ -32,34 +31,35 @@ func Run(ctx context.Context, o Options) (os.Signal, error) {
 	p := player.Start(ctx)
 	defer p.Stop()
 	m := newModel(o, p)
-	return m.run()
+	caught, err := loop(m, o)
+	if m.failed != nil {
+		err = m.failed
+	}
+	if err != nil {
+		err = fmt.Errorf("the live view broke, which is a fault of this program: %w", err)
+	}
+	return caught, err
 }
 
-// run is the screen's loop. Signals are ours: the library's own handling of
-// them can hang.
-func (m *Model) run() (os.Signal, error) {
+// loop shows a model until it is left or a signal comes. Signals are ours: the
+// library's own handling of them can hang.
+func loop(m tea.Model, o Options) (os.Signal, error) {
 	settings := []tea.ProgramOption{
-		tea.WithAltScreen(), tea.WithoutSignalHandler(), tea.WithOutput(m.options.Out), tea.WithFPS(player.FramesPerSecond),
+		tea.WithAltScreen(), tea.WithoutSignalHandler(), tea.WithOutput(o.Out), tea.WithFPS(player.FramesPerSecond),
 	}
-	if m.options.In != nil {
-		settings = append(settings, tea.WithInput(m.options.In))
+	if o.In != nil {
+		settings = append(settings, tea.WithInput(o.In))
 	}
 	program := tea.NewProgram(m, settings...)
 	caught, stop := listen(program)
 	defer stop()
 	_, err := program.Run()
-	if m.failed != nil {
-		err = fmt.Errorf("the live view broke, which is a fault of this program: %w", m.failed)
-	}
 	select {
 	case s := <-caught:
-		return s, err
+		return s, nil
 	default:
+		return nil, err
 	}
-	if errors.Is(err, tea.ErrProgramPanic) {
-		err = fmt.Errorf("the live view broke, which is a fault of this program: %w", err)
-	}
-	return nil, err
 }
 
 // listen ends the program at INT, TERM and HUP.
