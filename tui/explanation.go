@@ -127,33 +127,37 @@ func (e explanation) words(y int, f format) {
 	}
 }
 
-// sentence says why a part is late.
+// sentence says why a part is late, reasons that round to nothing left out.
 func sentence(s scenarios.Shift, f format, unit string) string {
-	time := func(v float64) string { return withUnit(f.text(math.Abs(v)), unit) }
-	text := fmt.Sprintf("What is %s arrives %s %s than in free flight (%s)", s.Part, time(s.Total), pick(s.Total, "later", "earlier"), time(s.Free))
-	reasons := []string{}
-	for _, part := range []struct {
-		value         float64
-		slower, quick string
-	}{
-		{s.Structure, structureWords(s.Part)[0], structureWords(s.Part)[1]},
-		{s.Filter, "because the slower part of the spectrum is " + s.Part + " more easily", "because the faster part of the spectrum is " + s.Part + " more easily"},
-		{s.Exit, "because it is slower behind the structure", "because it is faster behind the structure"},
-	} {
-		if f.text(math.Abs(part.value)) != f.text(0) {
-			reasons = append(reasons, fmt.Sprintf("%s %s %s", time(part.value), pick(part.value, "later", "earlier"), pick(part.value, part.slower, part.quick)))
+	text := fmt.Sprintf("What is %s comes %s %s", s.Part, withUnit(f.text(math.Abs(s.Total)), unit), pick(s.Total, "late", "early"))
+	mark := ": "
+	for _, r := range reasons(s) {
+		if f.text(math.Abs(r.value)) != f.text(0) {
+			text += mark + withUnit(f.signed(r.value), unit) + ", " + pick(r.value, r.late, r.early)
+			mark = "; "
 		}
 	}
-	return join(text, reasons)
+	return text + "."
 }
 
-// structureWords are the words for a structure that delays and for one that
-// hurries.
-func structureWords(part string) [2]string {
-	if part == "reflected" {
-		return [2]string{"because it turns back only within the structure", "because it turns back before the structure's face would send it"}
+// reason is a part of a shift with the words for either sign.
+type reason struct {
+	value       float64
+	late, early string
+}
+
+func reasons(s scenarios.Shift) []reason {
+	if s.Part == "reflected" {
+		return []reason{
+			{s.Structure, "it turns back only within the structure", "it turns back sooner than at a hard wall"},
+			{s.Filter, "its slower part is reflected more easily", "its faster part is reflected more easily"},
+		}
 	}
-	return [2]string{"because the structure takes longer to cross than empty space", "because the structure takes less time to cross than empty space"}
+	return []reason{
+		{s.Structure, "the structure is slower to cross than empty space", "the structure is quicker to cross than empty space"},
+		{s.Filter, "its slower part passes more easily", "its faster part passes more easily"},
+		{s.Exit, "it is slower behind the structure", "it is faster behind the structure"},
+	}
 }
 
 func pick(v float64, positive, negative string) string {
@@ -161,19 +165,4 @@ func pick(v float64, positive, negative string) string {
 		return negative
 	}
 	return positive
-}
-
-// join makes the sentence.
-func join(text string, reasons []string) string {
-	for i, r := range reasons {
-		switch {
-		case i == 0:
-			text += ": " + r
-		case i == len(reasons)-1:
-			text += ", and " + r
-		default:
-			text += ", " + r
-		}
-	}
-	return text + "."
 }

@@ -8,6 +8,7 @@ import (
 
 	"github.com/charmbracelet/x/exp/golden"
 
+	"fluxtoll/scenarios"
 	"fluxtoll/tui/canvas"
 )
 
@@ -118,7 +119,7 @@ func TestPanelsGiveWayInOrder(t *testing.T) {
 	}{
 		{240, 60, "stage tally numbers arrivals spectrum"},
 		{80, 24, "stage tally numbers arrivals spectrum"},
-		{80, 20, "stage tally numbers arrivals"},
+		{80, 18, "stage tally numbers arrivals"},
 		{60, 24, "stage tally numbers"},
 		{80, 12, "stage tally"},
 		{30, 24, "stage tally arrivals spectrum"},
@@ -146,6 +147,26 @@ func TestPanelsDoNotOverlap(t *testing.T) {
 					t.Fatalf("%dx%d, panels %v: %s", w, h, want, msg)
 				}
 			}
+		}
+	}
+}
+
+// The reasons for a shift in words, for either sign.
+func TestSentence(t *testing.T) {
+	f := format{decimals: 1}
+	for _, c := range []struct {
+		shift scenarios.Shift
+		want  string
+	}{
+		{scenarios.Shift{Part: "transmitted", Total: 12, Structure: 14.2, Filter: -2.2},
+			"What is transmitted comes 12.0 fs late: +14.2 fs, the structure is slower to cross than empty space; -2.2 fs, its faster part passes more easily."},
+		{scenarios.Shift{Part: "transmitted", Total: -3, Structure: -4, Exit: 1},
+			"What is transmitted comes 3.0 fs early: -4.0 fs, the structure is quicker to cross than empty space; +1.0 fs, it is slower behind the structure."},
+		{scenarios.Shift{Part: "reflected", Total: 4, Structure: 3.5, Filter: 0.5},
+			"What is reflected comes 4.0 fs late: +3.5 fs, it turns back only within the structure; +0.5 fs, its slower part is reflected more easily."},
+	} {
+		if got := sentence(c.shift, f, "fs"); got != c.want {
+			t.Errorf("%q, want %q", got, c.want)
 		}
 	}
 }

@@ -172,7 +172,7 @@ func TestResize(t *testing.T) {
 		x.Resize(size[0], size[1])
 		x.Until("screen", func(s string) bool { return strings.TrimSpace(s) != "" })
 	}
-	x.Wait("plane wave", "measured", "What is transmitted arrives")
+	x.Wait("plane wave", "measured", "What is transmitted comes")
 	x.Keys("q")
 	left(t, x, "0")
 }
