@@ -1,7 +1,5 @@
 package propagate
 
-import "math"
-
 // tridiagonal is a complex symmetric tridiagonal matrix as its factors
 // L D L^T: step[i] couples row i+1 to row i in L, inverse holds 1/D.
 type tridiagonal struct{ step, inverse []complex128 }
@@ -12,16 +10,16 @@ func newTridiagonal(n int) tridiagonal {
 }
 
 // factor makes the factors from the diagonal and the off-diagonal (off[i]
-// couples rows i and i+1). A pivot that vanishes exactly, at an energy at
-// which the rows so far stand on their own, is replaced by a tiny one.
+// couples rows i and i+1). A pivot that all but vanishes, at an energy at which
+// the rows so far stand on their own, is moved to nearPole times its coupling.
 func (t tridiagonal) factor(diag, off []complex128) {
 	for i, d := range diag {
 		if i > 0 {
 			t.step[i-1] = off[i-1] * t.inverse[i-1]
 			d -= off[i-1] * t.step[i-1]
 		}
-		if d == 0 {
-			d = complex(math.SmallestNonzeroFloat32, 0)
+		if i < len(off) && square(d) < nearPole*nearPole*square(off[i]) {
+			d = complex(nearPole, 0) * off[i]
 		}
 		t.inverse[i] = 1 / d
 	}
