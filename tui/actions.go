@@ -108,7 +108,19 @@ func (m *Model) write(name string, overwrite bool, write func(io.Writer) error) 
 	}
 }
 
-func (m *Model) askScenario() { m.askFile("Scenario to file", ".toml", m.encode) }
+// askScenario also says which tables the file will need.
+func (m *Model) askScenario() {
+	label := "Scenario to file"
+	if m.file != nil {
+		for _, l := range m.file.Layers {
+			if l.Table != nil {
+				label = "Scenario (its table " + l.Table.File + " must lie beside it) to file"
+			}
+		}
+	}
+	m.askFile(label, ".toml", m.encode)
+}
+
 func (m *Model) askText()     { m.askFile("Frame as text to file", ".txt", m.text) }
 func (m *Model) askSVG()      { m.askFile("Frame as SVG to file", ".svg", m.svg) }
 

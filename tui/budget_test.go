@@ -60,13 +60,14 @@ func testTrial(t testing.TB, f *scenarios.File) *scenarios.Trial {
 	return trial
 }
 
-// showing is the cost of one frame: looking at the moment and drawing it.
-func showing(b *testing.B, w, h int) {
-	m, frames := movie(b, w, h)
-	live := testLive(b, "thin-barrier")
+// showing returns what is done for one frame: looking at the moment and
+// drawing it.
+func showing(t testing.TB, w, h int) func() {
+	m, frames := movie(t, w, h)
+	live := testLive(t, "thin-barrier")
 	window := frames[0].Moment.Window
 	i := 0
-	for b.Loop() {
+	return func() {
 		live.Moment(window)
 		m.frame = frames[i%len(frames)]
 		m.view.update(m.frame.Outlook, m.frame.Moment, 2*w)
@@ -75,28 +76,39 @@ func showing(b *testing.B, w, h int) {
 	}
 }
 
-func BenchmarkFrame80x24(b *testing.B)  { showing(b, 80, 24) }
-func BenchmarkFrame200x60(b *testing.B) { showing(b, 200, 60) }
+func benchmarkFrame(b *testing.B, w, h int) {
+	show := showing(b, w, h)
+	for b.Loop() {
+		show()
+	}
+}
+
+func BenchmarkFrame80x24(b *testing.B)  { benchmarkFrame(b, 80, 24) }
+func BenchmarkFrame200x60(b *testing.B) { benchmarkFrame(b, 200, 60) }
 
 // At 30 frames a second a frame at 80x24 may cost a quarter of 1/30 s, and one
-// at 200x60 the whole of it.
+// at 200x60 the whole of it. The machine may be busy: the quickest of some
+// stretches counts.
 func TestFramesAreCheapEnough(t *testing.T) {
 	for _, c := range []struct {
-		name  string
-		bench func(*testing.B)
+		w, h  int
 		limit time.Duration
 	}{
-		{"80x24", BenchmarkFrame80x24, time.Second / player.FramesPerSecond / 4},
-		{"200x60", BenchmarkFrame200x60, time.Second / player.FramesPerSecond},
+		{80, 24, time.Second / player.FramesPerSecond / 4},
+		{200, 60, time.Second / player.FramesPerSecond},
 	} {
-		r := testing.Benchmark(c.bench)
-		if r.N == 0 {
-			t.Fatalf("%s: the benchmark failed", c.name)
+		show, best := showing(t, c.w, c.h), time.Hour
+		for range 5 {
+			const frames = 20
+			began := time.Now()
+			for range frames {
+				show()
+			}
+			best = min(best, time.Since(began)/frames)
 		}
-		took := time.Duration(r.NsPerOp())
-		t.Logf("%s: %v a frame, %d allocations", c.name, took, r.AllocsPerOp())
-		if took > c.limit {
-			t.Errorf("%s: %v a frame, at most %v is allowed", c.name, took, c.limit)
+		t.Logf("%dx%d: %v a frame", c.w, c.h, best)
+		if best > c.limit {
+			t.Errorf("%dx%d: %v a frame, at most %v is allowed", c.w, c.h, best, c.limit)
 		}
 	}
 }
@@ -121,7 +133,7 @@ type turn struct{}
 func (r *reel) Init() tea.Cmd { return r.tick() }
 
 func (r *reel) tick() tea.Cmd {
-	return tea.Tick(time.Second/50, func(time.Time) tea.Msg { return turn{} })
+	return tea.Tick(time.Second/60, func(time.Time) tea.Msg { return turn{} })
 }
 
 func (r *reel) Update(msg tea.Msg) (tea.Model, tea.Cmd) {
@@ -147,9 +159,9 @@ func (r *reel) Update(msg tea.Msg) (tea.Model, tea.Cmd) {
 func TestBytesOfAFrame(t *testing.T) {
 	for _, c := range []struct{ w, h, limit int }{{80, 24, 4 << 10}, {200, 60, 24 << 10}} {
 		m, frames := movie(t, c.w, c.h)
-		frames = frames[:50] // the packet comes and meets the barrier
+		frames = frames[:40] // the packet comes and meets the barrier
 		var out counter
-		p := tea.NewProgram(&reel{Model: m, frames: frames}, tea.WithInput(nil), tea.WithOutput(&out), tea.WithFPS(100), tea.WithoutSignalHandler())
+		p := tea.NewProgram(&reel{Model: m, frames: frames}, tea.WithInput(nil), tea.WithOutput(&out), tea.WithFPS(120), tea.WithoutSignalHandler())
 		if _, err := p.Run(); err != nil {
 			t.Fatal(err)
 		}

@@ -86,11 +86,21 @@ func (e *editor) value(path string) (text string, changed bool) {
 	return q.String(), err == nil && before.String() != q.String()
 }
 
+// brief is the picked quantity in one line.
+func (e *editor) brief() string {
+	text, _ := e.value(e.path())
+	return e.path() + " = " + text + "   " + e.step()
+}
+
+// step is the step of the picked quantity in words.
+func (e *editor) step() string {
+	return "step " + strconv.FormatFloat(math.Pow10(e.exponent(e.path())), 'g', -1, 64)
+}
+
 // draw lists the quantities around the picked one; * marks what was changed.
 func (e *editor) draw(b canvas.Box) {
-	step := "step " + strconv.FormatFloat(math.Pow10(e.exponent(e.path())), 'g', -1, 64)
 	b.Text(0, 0, canvas.Faint, cut("change a quantity", b.Wide))
-	b.TextRight(b.Wide, 0, canvas.Faint, step)
+	b.TextRight(b.Wide, 0, canvas.Faint, e.step())
 	rows := b.High - 1
 	first := max(0, min(e.at-rows/2, len(e.paths)-rows))
 	for y := 0; y < rows && first+y < len(e.paths); y++ {

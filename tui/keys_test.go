@@ -90,9 +90,10 @@ func TestEveryKeyCanBePressed(t *testing.T) {
 	t.Chdir(t.TempDir())
 	pressed := 0
 	for _, in := range allModes() {
+		m := testModel(t)
 		for _, b := range keyMap(in) {
 			for _, k := range b.Keys() {
-				m := testModel(t)
+				m.mode = watching
 				m.put(in)
 				if got := keyMsg(k).String(); got != k {
 					t.Fatalf("no message for the key %q, only %q", k, got)

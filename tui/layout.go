@@ -35,6 +35,7 @@ const (
 	numbersWide          = 50 // with all three columns
 	numbersNarrow        = 39 // without the plane wave
 	numbersMost          = 86
+	editorMost           = 44
 	lowerLeast           = 5
 )
 
@@ -103,11 +104,24 @@ func (l *layout) divide(r rect, want chosen, editing bool) bool {
 		return !l.numbers.empty()
 	}
 	if editing {
-		l.editor = left
-		return true
+		left = l.edit(left)
 	}
-	l.graphs(left, want)
+	if !left.empty() {
+		l.graphs(left, want)
+	}
 	return true
+}
+
+// edit gives the editor what the graphs had, or the right half where that is
+// wide enough for one of them beside it, and returns what is left for them.
+func (l *layout) edit(r rect) rect {
+	if r.wide < 2*graphWide+1 {
+		l.editor = r
+		return rect{}
+	}
+	wide := min(editorMost, (r.wide-1)/2)
+	l.editor = rect{r.x + r.wide - wide, r.y, wide, r.high}
+	return rect{r.x, r.y, r.wide - wide - 1, r.high}
 }
 
 // numbersRoom is the width that the numbers get of a row.

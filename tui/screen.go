@@ -38,7 +38,7 @@ func (s screen) draw(c *canvas.Canvas, w, h int) {
 	s.stage(box(c, l.stage))
 	s.panels(c, l)
 	if !l.footer.empty() {
-		s.footer(box(c, l.footer))
+		s.footer(box(c, l.footer), l.editor.empty())
 	}
 }
 
@@ -149,10 +149,15 @@ func (s screen) panels(c *canvas.Canvas, l layout) {
 	}
 }
 
-func (s screen) footer(b canvas.Box) {
-	if s.note != "" {
+// footer is the last line: what there is to say, or the picked quantity where
+// there is no room for the editor, or the keys.
+func (s screen) footer(b canvas.Box, bare bool) {
+	switch {
+	case s.note != "":
 		b.Text(0, 0, canvas.Strong, cut(s.note, b.Wide))
-		return
+	case s.editor != nil && bare:
+		b.Text(0, 0, canvas.Strong, cut(s.editor.brief(), b.Wide))
+	default:
+		b.Text(0, 0, canvas.Faint, cut(s.hints, b.Wide))
 	}
-	b.Text(0, 0, canvas.Faint, cut(s.hints, b.Wide))
 }

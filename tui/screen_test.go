@@ -136,7 +136,7 @@ func TestPanelsGiveWayInOrder(t *testing.T) {
 // for every choice of panels.
 func TestPanelsDoNotOverlap(t *testing.T) {
 	for w := leastWide; w < 260; w += 7 {
-		for h := leastHigh; h < 70; h++ {
+		for h := leastHigh; h < 70; h += 1 + h/20 {
 			for bits := range 32 {
 				var want chosen
 				for p := range panels {
@@ -147,6 +147,40 @@ func TestPanelsDoNotOverlap(t *testing.T) {
 					t.Fatalf("%dx%d, panels %v: %s", w, h, want, msg)
 				}
 			}
+		}
+	}
+}
+
+// A packet road that was refused is explained where the packet would be, and
+// the numbers of the other road are shown, at every size.
+func TestARefusedPacketRoadIsExplained(t *testing.T) {
+	f, err := openDemo("thin-barrier")
+	if err != nil {
+		t.Fatal(err)
+	}
+	s, err := f.Compile()
+	if err != nil {
+		t.Fatal(err)
+	}
+	trial, err := scenarios.Prepare(t.Context(), s, scenarios.Forced{Limits: scenarios.Limits{Nodes: 20}})
+	if err != nil {
+		t.Fatal(err)
+	}
+	live, err := scenarios.NewLive(trial)
+	if err != nil {
+		t.Fatal(err)
+	}
+	var c canvas.Canvas
+	for _, size := range []Size{{80, 24}, {120, 36}, {30, 8}, {5, 1}} {
+		v := newView()
+		v.still(live, size).draw(&c, size.Wide, size.High)
+	}
+	v := newView()
+	v.still(live, Size{100, 30}).draw(&c, 100, 30)
+	screen := c.String(canvas.Output{UTF8: true})
+	for _, want := range []string{"the packet road would need", "average only", "0.10126862"} {
+		if !strings.Contains(screen, want) {
+			t.Errorf("the screen lacks %q:\n%s", want, screen)
 		}
 	}
 }

@@ -178,6 +178,12 @@ func (s stage) outline(b canvas.Box) {
 
 // captions name scale and planes along the top.
 func (s stage) captions(b canvas.Box) {
+	if s.outlook.Refused != "" {
+		for y, line := range wrap(s.outlook.Refused, b.Wide-4) {
+			b.Text(2, y, canvas.Strong, line)
+		}
+		return
+	}
 	unit := ""
 	if s.outlook.Units.Length != "" {
 		unit = "/" + s.outlook.Units.Length

@@ -121,6 +121,9 @@ func watch(cmd *cobra.Command, args []string, flags watchFlags) error {
 		Folder: ".", Out: os.Stdout, Output: canvas.Output{Depth: depth, UTF8: utf8Locale(os.Getenv)},
 		Open: func(name string) (*scenarios.File, error) { return openScenario(name, strings.NewReader("")) },
 	}
+	if name := os.Getenv("TERM"); name == "" || name == "dumb" {
+		return fmt.Errorf("watch needs a terminal that can place its characters, and TERM is %q; --frames N prints plain frames instead", name)
+	}
 	if len(args) > 0 {
 		if o.File, err = openForWatch(args[0], cmd.InOrStdin()); err != nil {
 			return err

@@ -204,6 +204,32 @@ func TestColoursFollowTheEnvironment(t *testing.T) {
 	}
 }
 
+// A reader that has seen enough ends the program without a word.
+func TestClosedPipeIsQuiet(t *testing.T) {
+	x := tmuxtest.Open(t, 100, 30, "LC_ALL=C.UTF-8")
+	x.Type(program(t) + ` watch thin-barrier --frames 2000 | head -n 1; echo "over"`)
+	screen := x.Wait("Tunnelling through", "\nover")
+	if strings.Contains(screen, "pipe") {
+		t.Errorf("the screen shows\n%s", screen)
+	}
+}
+
+// ctrl+z gives the shell back, and fg the picture.
+func TestSuspend(t *testing.T) {
+	x := tmuxtest.Open(t, 80, 24, "LC_ALL=C.UTF-8")
+	x.Type("set -m; " + program(t) + " watch thin-barrier")
+	x.Wait("▸")
+	x.Keys("C-z")
+	x.Wait("Stopped")
+	if x.Alternate() {
+		t.Error("the alternate screen is still on")
+	}
+	x.Type("fg")
+	x.Wait("free flight", "‖")
+	x.Keys("q")
+	x.Until("shell", func(string) bool { return !x.Alternate() })
+}
+
 // Without an argument there is a choice.
 func TestChooserInATerminal(t *testing.T) {
 	x := tmuxtest.Open(t, 80, 24, "LC_ALL=C.UTF-8")
