@@ -121,8 +121,8 @@ func (m *Model) askScenario() {
 	m.askFile(label, ".toml", m.encode)
 }
 
-func (m *Model) askText()     { m.askFile("Frame as text to file", ".txt", m.text) }
-func (m *Model) askSVG()      { m.askFile("Frame as SVG to file", ".svg", m.svg) }
+func (m *Model) askText() { m.askFile("Frame as text to file", ".txt", m.text) }
+func (m *Model) askSVG()  { m.askFile("Frame as SVG to file", ".svg", m.svg) }
 
 // encode writes the scenario as it is now.
 func (m *Model) encode(w io.Writer) error { return m.file.Encode(w) }

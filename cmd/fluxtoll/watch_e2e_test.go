@@ -225,7 +225,7 @@ func TestSuspend(t *testing.T) {
 		t.Error("the alternate screen is still on")
 	}
 	x.Type("fg")
-	x.Wait("free flight", "‖")
+	x.Wait("free flight", "▸")
 	x.Keys("q")
 	x.Until("shell", func(string) bool { return !x.Alternate() })
 }

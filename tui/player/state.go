@@ -160,6 +160,10 @@ func (s *state) faster(n int) {
 	s.dirty = true
 }
 
+// longestGap is the most time that counts between two ticks of the wall clock:
+// after a while in the background the packet has not run away.
+const longestGap = 250 * time.Millisecond
+
 // slice is how long the goroutine computes before it listens again.
 const slice = 20 * time.Millisecond
 
@@ -177,7 +181,7 @@ func (s *state) hurry() {
 // advance moves on by as many ticks as the time since the last call earned;
 // if they take longer than a slice, the rest is let go.
 func (s *state) advance(now time.Time) {
-	elapsed := now.Sub(s.last).Seconds()
+	elapsed := min(now.Sub(s.last), longestGap).Seconds()
 	first := s.last.IsZero()
 	s.last = now
 	switch {
