@@ -138,6 +138,10 @@ func TestRestoredRunEndsAtTheSameStep(t *testing.T) {
 	}
 	last := len(states) - 1
 	for _, i := range []int{last, last - 1, last - 2, last - 3, 0, last / 2, last - 9} {
+		run.Restore(states[0])
+		for range 2 * checkEvery {
+			run.Next()
+		}
 		run.Restore(states[i])
 		if got := describe(run, run.Finish(t.Context())); got != want {
 			t.Errorf("restored to state %d, the run ended otherwise:\n%s\n%s", i, got, want)
