@@ -2,6 +2,7 @@ package tui
 
 import (
 	"math"
+	"slices"
 	"strconv"
 
 	"fluxtoll/scenarios"
@@ -18,7 +19,25 @@ type editor struct {
 }
 
 func newEditor(f *scenarios.File) *editor {
-	return &editor{file: f.Clone(), original: f, paths: f.Quantities(), finer: map[string]int{}}
+	e := &editor{file: f.Clone(), original: f, paths: f.Quantities(), finer: map[string]int{}}
+	for _, path := range []string{"entry.height", "exit.height", "bias.drop"} {
+		if !slices.Contains(e.paths, path) {
+			e.paths = append(e.paths, path) // 0 where the file does not state it
+		}
+	}
+	return e
+}
+
+// quantity is the one at a path of a file: 0, in the unit of the packet's
+// energy, where an energy is not stated.
+func quantity(f *scenarios.File, path string) (scenarios.Quantity, error) {
+	q, err := f.Get(path)
+	if err == nil {
+		return q, nil
+	}
+	q, err = f.Get("packet.energy")
+	q.Number = 0
+	return q, err
 }
 
 // move picks another quantity.
@@ -29,12 +48,13 @@ func (e *editor) path() string { return e.paths[e.at] }
 // exponent is the power of ten of the step: the second digit of the original
 // number, but for what the user chose.
 func (e *editor) exponent(path string) int {
-	q, err := e.original.Get(path)
+	q, err := quantity(e.original, path)
+	if err == nil && q.Number == 0 && q.Kind == scenarios.Energy {
+		q, err = e.original.Get("packet.energy")
+	}
 	n := -1
 	if err == nil && q.Number != 0 {
 		n = int(math.Floor(math.Log10(math.Abs(q.Number))+1e-9)) - 1
-	} else if err == nil && q.Unit != "" {
-		n = 1
 	}
 	return n - e.finer[path]
 }
@@ -46,7 +66,7 @@ func (e *editor) resize(n int) {
 
 // change adds n steps to the picked quantity.
 func (e *editor) change(n int) error {
-	q, err := e.file.Get(e.path())
+	q, err := quantity(e.file, e.path())
 	if err != nil {
 		return err
 	}
@@ -69,7 +89,7 @@ func (e *editor) set(text string) error { return e.file.Set(e.path(), text) }
 
 // reset brings the picked quantity back.
 func (e *editor) reset() error {
-	q, err := e.original.Get(e.path())
+	q, err := quantity(e.original, e.path())
 	if err != nil {
 		return err
 	}
@@ -78,11 +98,11 @@ func (e *editor) reset() error {
 
 // value is the quantity at a path as text, and whether it was changed.
 func (e *editor) value(path string) (text string, changed bool) {
-	q, err := e.file.Get(path)
+	q, err := quantity(e.file, path)
 	if err != nil {
 		return missing, false
 	}
-	before, err := e.original.Get(path)
+	before, err := quantity(e.original, path)
 	return q.String(), err == nil && before.String() != q.String()
 }
 

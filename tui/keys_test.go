@@ -217,3 +217,26 @@ func TestStepsAreDecimal(t *testing.T) {
 		}
 	}
 }
+
+// What the file does not state can be given all the same: a bias.
+func TestABiasCanBeGiven(t *testing.T) {
+	m := testModel(t)
+	press(m, "e")
+	for range 20 {
+		press(m, "down")
+	}
+	if text, _ := m.editor.value(m.editor.path()); m.editor.path() != "bias.drop" || text != "0 meV" {
+		t.Fatalf("the last quantity is %s = %s", m.editor.path(), text)
+	}
+	before := m.frame.Outlook.Predicted.Transmitted
+	press(m, "right", "right")
+	if text, changed := m.editor.value("bias.drop"); text != "20 meV" || !changed {
+		t.Errorf("bias %s (changed: %t), want 20 meV", text, changed)
+	}
+	for m.frame.Scenario != m.number || m.frame.Loading {
+		m.Update(frameMsg{m.player.Next()})
+	}
+	if after := m.frame.Outlook.Predicted.Transmitted; after == before {
+		t.Errorf("the bias changes nothing: %g", after)
+	}
+}

@@ -35,6 +35,7 @@ type Model struct {
 // newModel starts with the scenario of the options, or else with a choice.
 func newModel(o Options, p *player.Player) *Model {
 	m := &Model{options: o, player: p, canvas: &canvas.Canvas{}, view: newView(), w: 80, h: 24}
+	p.View(scenarios.Window{Columns: 2 * m.w})
 	if o.File != nil {
 		m.load(o.File)
 	} else {
@@ -57,6 +58,9 @@ func (m *Model) Update(msg tea.Msg) (tea.Model, tea.Cmd) {
 	switch msg := msg.(type) {
 	case tea.WindowSizeMsg:
 		m.w, m.h = msg.Width, msg.Height
+		if m.frame == nil {
+			m.player.View(scenarios.Window{Columns: 2 * m.w})
+		}
 		m.look(func() {})
 	case frameMsg:
 		return m, m.show(msg.frame)

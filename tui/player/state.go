@@ -87,7 +87,9 @@ func (s *state) adopt(r preparation) {
 	}
 	s.live, s.goal, s.due = r.live, -1, 0
 	s.last = time.Time{}
-	s.window = scenarios.Window{From: r.live.Outlook.From, To: r.live.Outlook.To, Columns: max(1, s.window.Columns)}
+	if s.window.To <= s.window.From {
+		s.window = scenarios.Window{From: r.live.Outlook.From, To: r.live.Outlook.To, Columns: max(1, s.window.Columns)}
+	}
 }
 
 func (s *state) look(w scenarios.Window) {
