@@ -4,6 +4,7 @@ import (
 	"context"
 	"encoding/json"
 	"math"
+	"runtime"
 	"testing"
 )
 
@@ -176,6 +177,33 @@ func TestShiftsAddUp(t *testing.T) {
 	if seen != 8 {
 		t.Errorf("%d shifts seen, want 8", seen)
 	}
+}
+
+// Nothing else grows with the run: the memory in use stays the same from the
+// fifth thousand of ticks to the twentieth, but for the snapshots.
+func TestHeapDoesNotGrow(t *testing.T) {
+	l := liveDemo(t, "thin-barrier", Forced{TimeStep: 0.02})
+	w := Window{l.Outlook.From, l.Outlook.To, 400}
+	heap := func() uint64 {
+		var m runtime.MemStats
+		runtime.GC()
+		runtime.ReadMemStats(&m)
+		return m.HeapAlloc
+	}
+	var before uint64
+	for l.Tick() && l.Now() < 20000 {
+		if l.Now()%500 == 0 {
+			l.Moment(w)
+		}
+		if l.Now() == 5000 {
+			before = heap()
+		}
+	}
+	_, bytes := l.Kept()
+	if after := heap(); l.Now() < 20000 || after > before+uint64(bytes)+(256<<10) {
+		t.Errorf("%d bytes in use at tick %d, %d at tick 5000, %d of them for going back", after, l.Now(), before, bytes)
+	}
+	runtime.KeepAlive(l)
 }
 
 // A long run: the memory for going back and for the flow stays bounded.

@@ -36,6 +36,7 @@ type lane struct {
 	predicted, free *float64
 	mean            *float64
 	top             float64
+	flight          string // what free stands for
 }
 
 func (a arrivals) draw() {
@@ -56,9 +57,9 @@ func (a arrivals) draw() {
 func (a arrivals) lanes() (far, near lane) {
 	p, flows := a.outlook.Arrivals, a.flows()
 	far = lane{name: "far", flux: flows.Far, style: canvas.Right, predicted: p.Transmitted, free: p.FreeTransmitted,
-		mean: a.measured("arrival_transmitted"), top: p.PeakTransmitted}
+		mean: a.measured("arrival_transmitted"), top: p.PeakTransmitted, flight: "free flight"}
 	near = lane{name: "near", flux: flows.Near, style: canvas.Left, predicted: p.Reflected, free: p.FreeReflected,
-		mean: a.measured("arrival_reflected"), top: p.PeakReflected}
+		mean: a.measured("arrival_reflected"), top: p.PeakReflected, flight: "from a hard wall"}
 	if a.outlook.Side == scenarios.FromRight {
 		far.style, near.style = near.style, far.style
 	}
@@ -104,8 +105,8 @@ func (a arrivals) fill(l lane) {
 	for _, v := range l.flux {
 		s.top = math.Max(s.top, v)
 	}
-	if s.top <= 0 {
-		return
+	if s.top <= 0 || l.predicted == nil {
+		return // rounding, if anything
 	}
 	ends, bin := a.flows().Ends, 0
 	for x := range wide {
@@ -152,7 +153,7 @@ func (a arrivals) caption(l lane) {
 	mean = pad(mean, len(predicted))
 	free := ""
 	if l.free != nil {
-		free = "  ┊ free flight " + f.text(*l.free)
+		free = "  ┊ " + l.flight + " " + f.text(*l.free)
 	}
 	unit := a.outlook.Units.Time
 	for _, text := range []string{
