@@ -104,9 +104,9 @@ func (e explanation) format() format {
 	}
 	f := timeFormat(size, 8)
 	if f.scientific {
-		return f
+		return format{1, true}
 	}
-	f.decimals = min(f.decimals, 3)
+	f.decimals = min(f.decimals, max(3, 3-int(math.Floor(math.Log10(size)))))
 	if err > 0 {
 		f.decimals = max(0, min(f.decimals, int(math.Floor(-math.Log10(err)))))
 	}
