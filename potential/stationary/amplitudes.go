@@ -39,10 +39,11 @@ type Amplitudes struct {
 	// the left, whichever side the wave comes from.
 	LayerDwell, LayerLoss []float64
 
-	// sharpness is |d(log a)/dE| with a = 1/T but for speeds: by how much a
-	// relative change of the amplitudes exceeds the change of the energy that
-	// makes it.
-	sharpness float64
+	// rounding is the relative standard deviation of the amplitudes by
+	// rounding, and sharpness |d(log a)/dE| with a = 1/T but for speeds: by how
+	// much a relative change of the amplitudes exceeds the change of the
+	// energy that makes it.
+	rounding, sharpness float64
 }
 
 func (a *Amplitudes) finite() bool {
@@ -138,6 +139,7 @@ func (s *Solver) resolve(l level, a *Amplitudes) {
 		a.GroupDelayReflected = imag(p.outLog) - imag(p.inLog) + p.delay
 	}
 	a.sharpness = cmplx.Abs(p.inLog + complex(0, p.shift))
+	a.rounding = w.noise.relative(p.speedIn, p.inSquare) + eps*(l.near*a.sharpness+math.Abs(w.log))/2
 	s.tally(a, 1/(p.speedIn*p.inSquare))
 }
 

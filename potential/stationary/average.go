@@ -144,7 +144,22 @@ func (q *quadrature) survey(ctx context.Context) error {
 		}
 	}
 	q.poles = distinct(q.poles)
+	for _, p := range q.poles {
+		q.raise(p.Energy)
+	}
 	return limit
+}
+
+// raise lifts the scale of what is transmitted to its height at an energy, so
+// that no resonance overflows it.
+func (q *quadrature) raise(energy float64) {
+	var a Amplitudes
+	if q.solver.At(energy, &a) != nil {
+		return // the panels will meet the error and report it
+	}
+	q.used++
+	k := q.solver.incidentWave(energy)
+	q.window.peak = max(q.window.peak, q.spectrum.logDensity(k)+a.LogTransmission)
 }
 
 // averages turns the sums into means.

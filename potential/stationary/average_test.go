@@ -174,6 +174,26 @@ func TestUnresolvedResonances(t *testing.T) {
 	}
 }
 
+// TestResonanceAboveADeepFloor: between resonances T is below the smallest
+// number, on them near 1; the scale must hold both.
+func TestResonanceAboveADeepFloor(t *testing.T) {
+	layers := []potential.Layer{flatOf(4, 2)}
+	for range 60 {
+		layers = append(layers, flatOf(3, 0), flatOf(4, 2))
+	}
+	s := build(t, plain, plain, layers...)
+	if floor := at(t, s, false, 0.25); !(floor.LogTransmission < -750) {
+		t.Fatalf("ln T = %g between resonances: not deep", floor.LogTransmission)
+	}
+	a := average(t, s, Spectrum{0.77, 0.02})
+	if len(a.Resonances)+a.Unresolved != 60 {
+		t.Errorf("%d resonances and %d unresolved, want 60 in all", len(a.Resonances), a.Unresolved)
+	}
+	if !(a.Transmitted.Value > 1e-12) {
+		t.Errorf("transmitted %v", a.Transmitted)
+	}
+}
+
 // TestConfinedByTheLead: a well between a barrier and a closed exit has
 // resonances though no second barrier stands there.
 func TestConfinedByTheLead(t *testing.T) {

@@ -12,6 +12,7 @@ type flatLayer struct {
 	m, d       [4]float64
 	growth     float64
 	turns      int     // whole half waves
+	rounds     float64 // units of rounding: the root of z carries its own size of them
 	rate       float64 // kappa/m of a barrier, else 0
 	length     float64
 	cc, cs, ss float64 // integrals of the products of the two basis solutions
@@ -25,21 +26,21 @@ const series = 0.25
 func (f *flatLayer) set(e, m, d float64) {
 	z := 2 * m * e * d * d
 	var c, s, sz float64
-	f.length, f.fade = d, 1
+	f.length, f.fade, f.rounds = d, 1, 1
 	switch {
 	case z > series:
 		theta := math.Sqrt(z)
 		sine, cosine := math.Sincos(theta)
 		c, s = cosine, sine/theta
 		sz = (c - s) / (2 * z)
-		f.turns = int(theta / math.Pi)
+		f.turns, f.rounds = int(theta/math.Pi), 1+theta
 		f.products(c, s, (1-c*s)/(2*z), m, d)
 	case z < -series:
 		y := math.Sqrt(-z)
 		f.fade = math.Exp(-2 * y)
 		c, s = (1+f.fade)/2, (1-f.fade)/(2*y)
 		sz = (c - s) / (2 * z)
-		f.growth, f.rate = y, y/(m*d)
+		f.growth, f.rate, f.rounds = y, y/(m*d), 1+y
 	default:
 		c, s, sz = seriesC(z), seriesS(z), seriesSz(z)
 		f.products(c, s, seriesG(z), m, d)

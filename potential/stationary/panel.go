@@ -33,7 +33,7 @@ func (p *panel) modulus(j int) float64 {
 
 func (p *panel) exceeds(wanted []float64) bool {
 	for j, w := range wanted {
-		if p.err[j] > w && p.err[j] > p.noise.of(j, p.value) {
+		if p.err[j] > w && p.err[j] > caution*p.noise.of(j, p.value) {
 			return true
 		}
 	}
@@ -132,7 +132,7 @@ func (r *rule) node(p *panel, x, weight float64, row []float64, node *Node) erro
 		t = dk * math.Exp(logDensity+a.LogTransmission-r.quadrature.window.peak)
 	}
 	integrands(row, a, g, t)
-	p.noise.add(a, weight*g, weight*t, s.scale(a.Energy), k*math.Abs(k-spectrum.K0)/(spectrum.Width*spectrum.Width))
+	p.noise.add(a, weight*g, weight*t, k*math.Abs(k-spectrum.K0)/(spectrum.Width*spectrum.Width))
 	*node = Node{K: k, Weight: weight * g, Amplitudes: *a}
 	node.Amplitudes.LayerDwell, node.Amplitudes.LayerLoss = nil, nil
 	return nil
@@ -159,9 +159,14 @@ func integrands(row []float64, a *Amplitudes, g, t float64) {
 	}
 }
 
-// estimate sets value, error and modulus of sum j: the error by the measure of
-// QUADPACK, which takes into account that the larger rule is far better than
-// the difference between the two where that is small.
+// caution is by how much the difference of the two rules is multiplied where
+// it is not small enough for more to be read into it.
+const caution = 4
+
+// estimate sets value, error and modulus of sum j. The error is the difference
+// between the two rules with some caution, or, where that is small, the
+// measure of QUADPACK, which takes into account that the larger rule is then
+// far better than the difference.
 func (r *rule) estimate(p *panel, j, n int, half float64) {
 	kronrod, gauss, modulus := 0.0, 0.0, 0.0
 	for i, w := range kronrodWeights {
@@ -178,7 +183,7 @@ func (r *rule) estimate(p *panel, j, n int, half float64) {
 	}
 	difference := math.Abs(kronrod - gauss)
 	if spread > 0 {
-		difference = spread * min(1, math.Pow(200*difference/spread, 1.5))
+		difference = min(caution*difference, spread*math.Pow(200*difference/spread, 1.5))
 	}
 	p.value[j], p.err[j] = half*kronrod, half*difference
 	if j < sums {

@@ -128,7 +128,7 @@ func (s *Solver) crossFlat(e *element, energy float64) {
 	var f flatLayer
 	f.set(energy-e.height, e.mass, e.length)
 	s.dwells[e.layer].add(f.density(&s.wave), s.wave.log+f.growth)
-	s.wave.apply(&f.m, &f.d, f.growth, f.turns)
+	s.wave.apply(&f.m, &f.d, f.growth, f.turns, f.rounds)
 }
 
 // crossLossy crosses a flat layer with loss: in one step, or, where the phase
@@ -144,7 +144,7 @@ func (s *Solver) crossLossy(e *element, energy float64) {
 	for range n {
 		density := f.density(s.wave.u(), s.wave.w())
 		s.dwells[e.layer].add(density, s.wave.log+f.growth)
-		s.wave.applyLossy(&f.m, &f.d, f.growth, 2*e.loss*density)
+		s.wave.applyLossy(&f.m, &f.d, f.growth, 2*e.loss*density, 1+math.Sqrt(square(f.theta)))
 	}
 }
 
@@ -155,7 +155,7 @@ func (s *Solver) crossSmooth(e *element, energy float64) {
 		for i := len(slices) - 1; i >= 0; i-- {
 			t := s.real.cross(&slices[i], energy)
 			s.dwells[e.layer].add(density(t, &s.wave), s.wave.log)
-			s.wave.apply(&t.m, &t.d, 0, 0)
+			s.wave.apply(&t.m, &t.d, 0, 0, sliceRounds)
 		}
 		return
 	}
@@ -164,9 +164,13 @@ func (s *Solver) crossSmooth(e *element, energy float64) {
 		t := s.cplx.cross(&slices[i], complex(energy, e.loss))
 		density := sampledDensity(&s.cplx, s.wave.u(), s.wave.w())
 		s.dwells[e.layer].add(density, s.wave.log)
-		s.wave.applyLossy(&t.m, &t.d, 0, 2*e.loss*density)
+		s.wave.applyLossy(&t.m, &t.d, 0, 2*e.loss*density, sliceRounds)
 	}
 }
+
+// sliceRounds is how many units of rounding a slice makes: its series has
+// terms of order 1.
+const sliceRounds = 2
 
 // tally is a sum of terms each given in units of exp(2 log).
 type tally struct{ sum, log float64 }

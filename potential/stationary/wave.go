@@ -20,6 +20,8 @@ type wave struct {
 	open, lossy    bool
 	speed          float64 // in the far lead; of a closed one the decay rate over mass
 
+	noise noise
+
 	turning bool
 	turn    float64 // arg u through whole turns, if turning
 }
@@ -36,6 +38,7 @@ const tiny = 1e-150
 func (w *wave) start(l level, mass, metric float64, lossy bool) {
 	*w = wave{pu: 1, er: 1, metric: metric, lossy: lossy, open: l.far >= 0}
 	w.speed = max(math.Sqrt(2*math.Abs(l.far)/mass), tiny)
+	w.noise.add(0, w.speed)
 	if !w.open {
 		w.pw = -w.speed
 		w.dw = complex(1/(mass*w.speed), 0)
@@ -57,23 +60,27 @@ func (w *wave) kick(strength float64) {
 	w.pw -= j * w.pu
 	w.qw -= j * w.qu
 	w.dw -= complex(j, 0) * w.du
+	w.noise.kick(j, math.Abs(w.pu)+math.Abs(w.qu))
 	w.balance()
 }
 
 // apply crosses a layer without loss, of matrix m exp(growth), its derivative
 // d exp(growth), in which the wave makes turns half turns and less than one
-// more.
-func (w *wave) apply(m, d *[4]float64, growth float64, turns int) {
+// more, and rounds units of rounding.
+func (w *wave) apply(m, d *[4]float64, growth float64, turns int, rounds float64) {
 	pu, pw, qu, qw := w.pu, w.pw, w.qu, w.qw
+	fade := 1.0
+	if growth != 0 {
+		fade = math.Exp(-2 * growth)
+	}
+	w.noise.pass(m, math.Abs(pu)+math.Abs(qu), math.Abs(pw)+math.Abs(qw), rounds, fade)
 	ur, ui, wr, wi := real(w.du), imag(w.du), real(w.dw), imag(w.dw)
 	w.du = complex(m[0]*ur+m[1]*wr+d[0]*pu+d[1]*pw, m[0]*ui+m[1]*wi+d[0]*qu+d[1]*qw)
 	w.dw = complex(m[2]*ur+m[3]*wr+d[2]*pu+d[3]*pw, m[2]*ui+m[3]*wi+d[2]*qu+d[3]*qw)
 	w.pu, w.pw = m[0]*pu+m[1]*pw, m[2]*pu+m[3]*pw
 	w.qu, w.qw = m[0]*qu+m[1]*qw, m[2]*qu+m[3]*qw
-	if growth != 0 {
-		w.log += growth
-		w.flux *= math.Exp(-2 * growth)
-	}
+	w.log += growth
+	w.flux *= fade
 	if w.turning {
 		w.follow(complex(pu, qu), turns)
 	}
@@ -82,8 +89,9 @@ func (w *wave) apply(m, d *[4]float64, growth float64, turns int) {
 
 // applyLossy crosses a layer with loss, in which gain is added to the flux
 // over exp(2 log) after the step.
-func (w *wave) applyLossy(m, d *[4]complex128, growth, gain float64) {
+func (w *wave) applyLossy(m, d *[4]complex128, growth, gain, rounds float64) {
 	u, v := w.u(), w.w()
+	w.noise.passLossy(m, math.Abs(w.pu)+math.Abs(w.qu), math.Abs(w.pw)+math.Abs(w.qw), rounds)
 	w.du, w.dw = m[0]*w.du+m[1]*w.dw+d[0]*u+d[1]*v, m[2]*w.du+m[3]*w.dw+d[2]*u+d[3]*v
 	nu, nw := m[0]*u+m[1]*v, m[2]*u+m[3]*v
 	w.pu, w.qu, w.pw, w.qw = real(nu), imag(nu), real(nw), imag(nw)
@@ -136,6 +144,7 @@ func (w *wave) rescale() {
 	w.pu, w.pw, w.qu, w.qw = w.pu*f, w.pw*f, w.qu*f, w.qw*f
 	w.du, w.dw = w.du*complex(f, 0), w.dw*complex(f, 0)
 	w.flux = w.flux * f * f
+	w.noise.scale(f)
 	w.log += float64(n) * math.Ln2
 }
 
