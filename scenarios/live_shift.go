@@ -9,11 +9,12 @@ import "fluxtoll/potential/stationary"
 // transmitted,
 //
 //	Structure = <tau>_T - b <1/v_in>_T
-//	Exit      = d (<1/v_out>_T - <1/v_in>_T)
+//	Exit      = arrival - <tau>_T - (X-b) <1/v_in>_T
 //	Filter    = X (<1/v_in>_T - <1/v_in>),
 //
-// whose sum is <tau>_T + (X-b-d) <1/v_in>_T + d <1/v_out>_T - X <1/v_in>. Of
-// what is reflected, free flight is that to a hard wall at the near face and
+// whose sum is arrival - X <1/v_in>. Exit is d (<1/v_out>_T - <1/v_in>_T), but
+// for what components for which the far lead is closed take off the times at
+// the plane. Of what is reflected, free flight is that to a hard wall at the near face and
 // back: Structure = <tau>_R, Exit = 0, Filter = X (<1/v_in>_R - <1/v_in>).
 // Display units; the errors are those of the averages.
 type Shift struct {
@@ -42,7 +43,7 @@ func (t *Trial) shiftTransmitted() Shift {
 	arrival, _ := t.averageArrivals()
 	return t.newShift("transmitted", arrival, way, Shift{
 		Structure: a.GroupDelayTransmitted.Value - p.width*in.Value,
-		Exit:      p.far * (a.SlownessOutTransmitted.Value - in.Value),
+		Exit:      arrival.Value - a.GroupDelayTransmitted.Value - (p.start+p.far)*in.Value,
 		Filter:    way * (in.Value - a.SlownessFree.Value),
 	})
 }

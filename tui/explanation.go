@@ -69,7 +69,7 @@ func (e explanation) columns() []shiftColumn {
 // exit reports whether the leads' difference matters.
 func (e explanation) exit() bool {
 	for _, s := range e.shifts {
-		if math.Abs(s.Exit) > 1e-9*math.Abs(s.Free) {
+		if math.Abs(s.Exit) > 1e-7*math.Abs(s.Free) {
 			return true
 		}
 	}

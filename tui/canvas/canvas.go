@@ -1,6 +1,11 @@
 package canvas
 
-import "unicode/utf8"
+import (
+	"unicode"
+	"unicode/utf8"
+
+	"golang.org/x/text/width"
+)
 
 // blank is an empty cell of a plot: as wide as its neighbours with dots in
 // every font.
@@ -38,11 +43,27 @@ func (c *Canvas) at(x, y int) *cell {
 	return &c.cells[y*c.W+x]
 }
 
-// Put draws one character.
+// Put draws one character. One that would not fill exactly one cell is drawn
+// as a question mark.
 func (c *Canvas) Put(x, y int, s Style, r rune) {
 	if p := c.at(x, y); p != nil {
-		*p = cell{r: r, style: s}
+		*p = cell{r: oneCell(r), style: s}
 	}
+}
+
+// oneCell replaces what is wide, combining, or obeyed by a terminal.
+func oneCell(r rune) rune {
+	if r < 0x300 {
+		if r < ' ' || r >= 0x7f && r < 0xa0 {
+			return '?'
+		}
+		return r
+	}
+	kind := width.LookupRune(r).Kind()
+	if kind == width.EastAsianWide || kind == width.EastAsianFullwidth || !unicode.IsPrint(r) || unicode.Is(unicode.M, r) {
+		return '?'
+	}
+	return r
 }
 
 // Text draws a line of text from x on, one cell a character, cut off at the

@@ -95,6 +95,16 @@ func TestDrawingOutsideIsIgnored(t *testing.T) {
 	}
 }
 
+// A character that is wide, combining or a command would break the columns.
+func TestEveryCharacterFillsOneCell(t *testing.T) {
+	var c Canvas
+	c.Reset(9, 1)
+	c.Text(0, 0, Plain, "a\u4e2db\u0301c\x1b\tħψ")
+	if got, want := c.String(Output{UTF8: true}), "a?b?c??ħψ"; got != want {
+		t.Errorf("%q, want %q", got, want)
+	}
+}
+
 func TestSVGIsWellFormed(t *testing.T) {
 	var c Canvas
 	c.Reset(20, 3)
