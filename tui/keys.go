@@ -98,14 +98,17 @@ func watchingKeys() []binding {
 
 func timeKeys() []binding {
 	const s = "Time"
+	nudge := func(n int) func(*Model) tea.Cmd { return do(func(m *Model) { m.player.Nudge(n) }) }
 	step := func(n int) func(*Model) tea.Cmd { return do(func(m *Model) { m.player.Step(n) }) }
 	stride := func(n int) func(*Model) tea.Cmd { return do(func(m *Model) { m.player.Stride(n) }) }
 	goTo := func(p player.Place) func(*Model) tea.Cmd { return do(func(m *Model) { m.player.Go(p) }) }
 	pace := func(n int) func(*Model) tea.Cmd { return do(func(m *Model) { m.player.Faster(n) }) }
 	return []binding{
 		hinted("space pause", bind(s, "space", "pause, go on", do(func(m *Model) { m.player.Pause() }), " ")),
-		hinted("← → step", bind(s, "→ .", "a little forward", step(1), "right", ".")),
-		bind(s, "← ,", "a little back", step(-1), "left", ","),
+		hinted("← → step", bind(s, "→", "a little forward", nudge(1), "right")),
+		bind(s, "←", "a little back", nudge(-1), "left"),
+		bind(s, ".", "the least bit forward", step(1), "."),
+		bind(s, ",", "the least bit back", step(-1), ","),
 		bind(s, "shift+→ >", "a step of the run forward", stride(1), "shift+right", ">"),
 		bind(s, "shift+← <", "a step of the run back", stride(-1), "shift+left", "<"),
 		bind(s, "home g", "to the start", goTo(player.AtStart), "home", "g"),
@@ -126,8 +129,8 @@ func viewKeys() []binding {
 	}
 	keep := func(f fit) func(*Model) tea.Cmd { return do(func(m *Model) { m.look(func() { m.view.fit = f }) }) }
 	return []binding{
-		bind(s, "l", "density linear or logarithmic", do(func(m *Model) { m.view.log = !m.view.log }), "l"),
-		hinted("d free packet", bind(s, "d", "free packet as an outline: the delay", do(func(m *Model) { m.view.ghost = !m.view.ghost }), "d")),
+		bind(s, "l", "density linear or log", do(func(m *Model) { m.view.log = !m.view.log }), "l"),
+		hinted("d free packet", bind(s, "d", "free packet as an outline", do(func(m *Model) { m.view.ghost = !m.view.ghost }), "d")),
 		bind(s, "↑ i", "zoom in", zoom(0.75), "up", "i"),
 		bind(s, "↓ o", "zoom out", zoom(1/0.75), "down", "o"),
 		bind(s, "[", "pan to the left", pan(-0.125), "["),
@@ -144,7 +147,7 @@ func panelKeys() []binding {
 		return do(func(m *Model) { m.view.want[p] = !m.view.want[p] })
 	}
 	return []binding{
-		bind(s, "1", "tally: where the probability is", toggle(panelTally), "1"),
+		bind(s, "1", "tally of probability", toggle(panelTally), "1"),
 		bind(s, "2", "arrivals at the planes", toggle(panelArrivals), "2"),
 		bind(s, "3", "spectrum of energies", toggle(panelSpectrum), "3"),
 		bind(s, "4", "numbers", toggle(panelNumbers), "4"),
@@ -156,7 +159,7 @@ func scenarioKeys() []binding {
 	return []binding{
 		hinted("e change", bind(s, "e", "change a quantity", do((*Model).edit), "e")),
 		bind(s, "n", "choose another scenario", do((*Model).choose), "n"),
-		bind(s, "W", "write the scenario to a file", do((*Model).askScenario), "W"),
+		bind(s, "W", "write scenario to a file", do((*Model).askScenario), "W"),
 		bind(s, "t", "write this frame as text", do((*Model).askText), "t"),
 		bind(s, "v", "write this frame as SVG", do((*Model).askSVG), "v"),
 	}
@@ -189,7 +192,7 @@ func editingKeys() []binding {
 		bind(s, "]", "step ten times finer", size(1), "]"),
 		hinted("enter type", bind(s, "enter", "type a value", do((*Model).askValue), "enter")),
 		bind(s, "u", "back to the first value", do(func(m *Model) { m.apply(m.editor.reset) }), "u", "backspace"),
-		hinted("W write", bind(s, "W", "write the scenario to a file", do((*Model).askScenario), "W")),
+		hinted("W write", bind(s, "W", "write scenario to a file", do((*Model).askScenario), "W")),
 		hinted("esc done", bind(s, "esc e", "done", do(func(m *Model) { m.done() }), "esc", "e")),
 	}
 }

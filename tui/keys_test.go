@@ -42,11 +42,12 @@ func TestEveryBindingIsHandledAndDocumented(t *testing.T) {
 	}
 }
 
-// Every line of the help is a binding of the mode, and every binding has one.
+// Every line of the help is a binding of the mode, and every binding has one,
+// in full at 80x24 while watching.
 func TestHelpListsEveryBinding(t *testing.T) {
-	for _, in := range []mode{watching, editing} {
+	for in, size := range map[mode]Size{watching: {80, 24}, editing: {200, 60}} {
 		var c canvas.Canvas
-		c.Reset(200, 60)
+		c.Reset(size.Wide, size.High)
 		drawHelp(c.Box(0, 0, c.W, c.H), keyMap(in), 0)
 		text := c.String(canvas.Output{UTF8: true})
 		for _, b := range keyMap(in) {

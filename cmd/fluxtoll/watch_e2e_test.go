@@ -67,7 +67,7 @@ func TestWatchInATerminal(t *testing.T) {
 	if !x.Alternate() {
 		t.Error("the alternate screen is not on")
 	}
-	x.Until("time that passes", func(s string) bool { return strings.Contains(s, " fs ") && clock(t, s) > 5 })
+	x.Until("time that passes", func(s string) bool { return strings.Contains(s, " fs ") && clock(t, s) > 20 })
 
 	x.Keys("Space")
 	paused := clock(t, x.Wait("‖"))
@@ -91,7 +91,7 @@ func TestWatchInATerminal(t *testing.T) {
 	x.Keys("G")
 	x.Wait("■", "agrees")
 	x.Keys("?")
-	x.Wait("Time", "Panels", "density linear or logarithmic")
+	x.Wait("Time", "Panels", "density linear or log")
 	x.Keys("q")
 	x.Wait("■")
 	x.Keys("q")

@@ -19,6 +19,18 @@ func (p *Player) Pause() { p.send((*state).toggle) }
 // Step pauses and moves by single ticks, back where n is negative.
 func (p *Player) Step(n int) { p.send(func(s *state) { s.stepTo(n) }) }
 
+// nudges is how many nudges lead through what can be seen of a run.
+const nudges = 240
+
+// Nudge pauses and moves by a step that can be seen.
+func (p *Player) Nudge(n int) {
+	p.send(func(s *state) {
+		if s.live != nil {
+			s.stepTo(n * max(1, s.live.Event()/nudges))
+		}
+	})
+}
+
 // Stride pauses and moves by whole steps of the run.
 func (p *Player) Stride(n int) {
 	p.send(func(s *state) {
