@@ -112,6 +112,12 @@ func TestStepsAndPlaces(t *testing.T) {
 		if got := newest(t, p); got.Moment.Tick <= contact+2 {
 			t.Errorf("a stride: tick %d, want more than %d", got.Moment.Tick, contact+2)
 		}
+		p.Go(AtContact)
+		settle()
+		p.Nudge(-1)
+		if got := at(); got >= contact-1 || got < contact-20 {
+			t.Errorf("a nudge back from %d: tick %d", contact, got)
+		}
 		p.Go(AtStart)
 		if got := at(); got != 0 {
 			t.Errorf("start: tick %d", got)
