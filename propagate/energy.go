@@ -22,16 +22,34 @@ func (m *moments) meanAndSpread() (mean, spread float64) {
 	return mean, math.Sqrt(math.Max(0, m.second/m.norm-mean*mean))
 }
 
-// energy is the mean and the standard deviation of the energy of what remains
-// between the planes: of H psi, taken at every node between them.
-func (s *Stepper) energy() (mean, spread float64) {
+// smooth returns (z-p)^-2 psi, z = -i dt (H-origin), p a pole of the step: the
+// wave without what lies far above the energies that the step follows, such as
+// the waves of the grid that sampling a packet leaves behind.
+func (s *Stepper) smooth() wave {
+	f, w, lost := s.factors[0], newWave(s.Mesh), make([]float64, len(s.lost))
+	copy(w.all, s.psi.all)
+	before := make([]complex128, len(w.all))
+	for range 2 {
+		copy(before, w.all)
+		f.solve(w, s.chi)
+		f.update(w, s.chi, lost)
+		for i, v := range before {
+			w.all[i] = ((w.all[i]-v)/f.weight() - v) / f.at
+		}
+	}
+	return w
+}
+
+// energy is the mean and the standard deviation of the energy of a wave between
+// the planes: of H psi, taken at every node between them.
+func (s *Stepper) energy(psi wave) (mean, spread float64) {
 	m, sum := s.Mesh, moments{}
 	var carry complex128 // M H psi at a face, from the element before it
 	for i := m.left; i < m.right; i++ {
 		e := m.elements[i]
 		h := newAction(&m.cells[e.cell], s.Origin)
-		left, right := s.psi.face[i], s.psi.face[i+1]
-		modes := s.psi.mode[e.mode : e.mode+len(h.cell.lambda)]
+		left, right := psi.face[i], psi.face[i+1]
+		modes := psi.mode[e.mode : e.mode+len(h.cell.lambda)]
 		h.inside(left, right, modes, &sum)
 		atLeft, atRight := h.faces(left, right, modes)
 		if i > m.left {

@@ -42,7 +42,7 @@ const (
 // are counted from the mean energy of what remains. It reports whether the
 // step changed.
 func (s *Stepper) Lengthen() bool {
-	mean, spread := s.energy()
+	mean, spread := s.energy(s.smooth())
 	dt := math.Min(1/(slowSpread*spread), s.ledger.Time/slowParts)
 	if !(dt >= 2*s.Step) {
 		return false

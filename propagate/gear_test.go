@@ -15,7 +15,7 @@ func TestEnergyOfAGaussian(t *testing.T) {
 		stepper := s.stepper(t)
 		width := 1 / (2 * s.packet.Length)
 		for range 3 {
-			mean, spread := stepper.energy()
+			mean, spread := stepper.energy(stepper.psi)
 			near(t, "mean", mean, (4+width*width)/2, 1e-8)
 			near(t, "spread", spread, math.Sqrt(4*width*width+math.Pow(width, 4)/2), 1e-7)
 			advance(stepper, 5)
@@ -39,7 +39,7 @@ func TestEnergyAgainstDense(t *testing.T) {
 	for i := left + 1; i < right; i++ {
 		want.add(real(mass[i]), psi[i], h[i]/mass[i])
 	}
-	mean, spread := stepper.energy()
+	mean, spread := stepper.energy(stepper.psi)
 	wantMean, wantSpread := want.meanAndSpread()
 	near(t, "mean", mean, s.origin+wantMean, 1e-9*spread)
 	near(t, "spread", spread/wantSpread, 1, 1e-9)

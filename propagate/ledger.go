@@ -1,6 +1,9 @@
 package propagate
 
-import "slices"
+import (
+	"math"
+	"slices"
+)
 
 // Passage is what has passed a plane outward so far.
 type Passage struct {
@@ -46,6 +49,7 @@ type Ledger struct {
 	InLayer     []float64 // probability in each layer now
 	FlowLeft    float64   // mean outward flow through the left plane in the last step, probability per time
 	FlowRight   float64   // the same at the right plane
+	FlowPeak    float64   // largest flow through either plane of late, forgotten by a fifth a step
 	start       float64   // probability between the planes at t = 0
 	since       float64   // time and number of steps when the present step size began
 	sinceSteps  int
@@ -71,6 +75,7 @@ func (l *Ledger) enter(dt, left, right float64, lost []float64) {
 		l.Lost[i] += v
 	}
 	l.FlowLeft, l.FlowRight = left/dt, right/dt
+	l.FlowPeak = max(math.Abs(l.FlowLeft), math.Abs(l.FlowRight), 0.8*l.FlowPeak)
 	l.Steps++
 	l.Time = l.since + float64(l.Steps-l.sinceSteps)*dt
 }

@@ -112,22 +112,25 @@ func (t *Trial) perPart(time, dwell float64) errorSet {
 	return e
 }
 
-// tail charges what remains between the planes to every part. It will come
-// later than now, by about the time in which it decays. As much of it as was
-// astray from the start is left out: it may never leave.
+// tail charges what remains between the planes to every part, and what may
+// still flow through the planes to and fro: near a threshold, waves beyond the
+// far plane return. Both come later than now, by about the time in which what
+// remains decays; a decay slower than that of exp(-t) goes as a power of t, for
+// which the delay counts twice.
+// As much of what remains as was astray from the start is left out: it may
+// never leave.
 func (t *Trial) tail(l *propagate.Ledger, remaining, lifetime float64) errorSet {
-	if math.IsInf(lifetime, 1) {
-		lifetime = l.Time
-	}
-	leaving := math.Max(0, remaining-2*t.stray())
+	lifetime = math.Min(lifetime, l.Time)
 	m := t.means()
-	late := leaving * math.Abs(l.Time+lifetime-math.Min(m.timeTransmitted, m.timeReflected))
+	leaving := math.Max(0, remaining-2*t.stray())
+	moving := math.Max(leaving, l.FlowPeak*lifetime)
+	late := moving * math.Abs(l.Time+lifetime-math.Min(m.timeTransmitted, m.timeReflected))
 	inLayers := 0.0
 	for _, p := range l.InLayer {
 		inLayers += p
 	}
-	e := t.perPart(late, math.Min(inLayers, leaving)*lifetime+leaving*t.Averages.Dwell.Value)
-	e.transmitted, e.reflected, e.lost = leaving, leaving, leaving
+	e := t.perPart(2*late, math.Min(inLayers, leaving)*lifetime+leaving*t.Averages.Dwell.Value)
+	e.transmitted, e.reflected, e.lost = moving, moving, leaving
 	return e
 }
 

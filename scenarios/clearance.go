@@ -15,13 +15,15 @@ import (
 // d the distance from the centre to the cut. The averages of the change are
 // computed with their sign, since for smooth amplitudes its oscillation in k
 // cancels, and for a narrow resonance it does not. The front's cut is charged
-// twice: what lies beyond it is not missing, but it is no incoming wave
-// either.
+// four times, and with its largest effect on any probability: what lies beyond
+// it is not missing, but it is no incoming wave either, and may end anywhere.
 func (p *planner) startError(g geometry) errorSet {
-	front := p.cutError(g, g.start)
+	front := p.cutError(g, g.start).times(4)
+	most := math.Max(front.transmitted, math.Max(front.reflected, front.lost))
+	front.transmitted, front.reflected, front.lost = most, most, most
 	back := p.cutError(g, g.behind-g.start)
 	beyond := func(d float64) float64 { return math.Erfc(d/p.scenario.Packet.Length/math.Sqrt2) / 2 }
-	total := front.times(2).plus(back).plus(p.mismatch(g))
+	total := front.plus(back).plus(p.mismatch(g))
 	return total.plus(p.misplaced(g, wrongWay(p.scenario.Packet)+beyond(g.start)+beyond(g.near-g.start)))
 }
 
@@ -136,10 +138,10 @@ func clearance(fraction float64) float64 {
 // as far as the scenario's own positions let them be.
 func (p *planner) positions() {
 	const step, most = 0.25, 40
-	farthest := p.scenario.place(most)
+	farthest := p.scenario.place(most, p.beyond)
 	n := clearance(sharePacket * p.scenario.Tolerance)
 	for {
-		p.geometry = p.scenario.place(n)
+		p.geometry = p.scenario.place(n, p.beyond)
 		p.start0 = p.startError(p.geometry)
 		if n >= most || p.excess() <= sharePacket || p.geometry == farthest {
 			return

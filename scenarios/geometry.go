@@ -4,6 +4,7 @@ import (
 	"math"
 
 	"fluxtoll/potential"
+	"fluxtoll/potential/stationary"
 	"fluxtoll/propagate"
 )
 
@@ -16,6 +17,8 @@ type geometry struct {
 	near   float64 // near plane, before the near face; beyond the start
 	far    float64 // far plane, behind the far face
 	behind float64 // end of the real grid before the near face, >= near
+
+	beyond stationary.Mean // what a closed far lead takes off the sum of times at the far plane
 }
 
 // at turns a distance before the near face into a position.
@@ -70,8 +73,8 @@ func (s *Scenario) jump() float64 { return math.Min(1e-9, 1e-3*s.Tolerance) }
 
 // place chooses what the scenario leaves open. clear is the number of packet
 // lengths at which the packet's tail is negligible.
-func (s *Scenario) place(clear float64) geometry {
-	g := geometry{side: s.Packet.Side, width: s.Structure.Width()}
+func (s *Scenario) place(clear float64, beyond stationary.Mean) geometry {
+	g := geometry{side: s.Packet.Side, width: s.Structure.Width(), beyond: beyond}
 	reach := clear * s.Packet.Length
 	g.start = s.roundUp(reach)
 	if s.Planes.Near != nil {
@@ -85,15 +88,20 @@ func (s *Scenario) place(clear float64) geometry {
 	if s.Planes.Near == nil {
 		g.near = s.roundUp(g.start + reach)
 	}
-	g.far = s.roundUp(farLengths * s.Packet.Length)
-	if s.Planes.Far != nil {
-		g.far = *s.Planes.Far - g.width
-		if g.side == FromRight {
-			g.far = -*s.Planes.Far
-		}
-	}
+	g.far = s.farDistance()
 	g.behind = math.Max(g.near, g.start+2*math.Sqrt(-math.Log(s.jump()))*s.Packet.Length)
 	return g
+}
+
+// farDistance is the distance of the far plane behind the structure.
+func (s *Scenario) farDistance() float64 {
+	switch {
+	case s.Planes.Far == nil:
+		return s.roundUp(farLengths * s.Packet.Length)
+	case s.Packet.Side == FromRight:
+		return -*s.Planes.Far
+	}
+	return *s.Planes.Far - s.Structure.Width()
 }
 
 // roundUp rounds a length up to two digits in display units, so that chosen

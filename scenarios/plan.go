@@ -70,10 +70,11 @@ type planner struct {
 
 // newPlan makes the plan. The error is a *LimitError where the run would be
 // too large.
-func newPlan(s *Scenario, a *stationary.Averages, forced Forced) (*Plan, error) {
+func newPlan(s *Scenario, a *stationary.Averages, beyond stationary.Mean, forced Forced) (*Plan, error) {
 	forced.Limits = forced.orDefault()
 	p := &planner{Plan: &Plan{k0: s.Packet.K0, length: s.Packet.Length}, scenario: s, forced: forced, averages: a}
 	p.near, p.far = s.leads()
+	p.geometry.beyond = beyond
 	p.spectrum()
 	p.positions()
 	if err := p.grid(); err != nil {
@@ -199,9 +200,34 @@ func (p *planner) edge(lead potential.Lead, limit float64, share func(sample) fl
 			goals = append(goals, propagate.EdgeGoal{Energy: s.energy, Weight: w})
 		}
 	}
-	e := propagate.ChooseEdge(lead, p.Order, goals, limit)
+	e := propagate.ChooseEdge(lead, p.Order, append(goals, p.threshold(lead)...), limit)
 	if p.forced.Edge > 0 {
 		e.Count = p.forced.Edge
 	}
 	return e
+}
+
+// threshold lists goals ever closer to the height of the far lead where the
+// packet's energies straddle it: each stands for what of the packet lies that
+// close, as a share of the smaller part.
+func (p *planner) threshold(lead potential.Lead) []propagate.EdgeGoal {
+	const closest = 1e-12 // of the band
+	step := lead.Height - p.near.Height
+	if !(step > 0 && lead.Height > p.Low && lead.Height < p.High) {
+		return nil
+	}
+	k := math.Sqrt(2 * p.near.Mass * step)
+	d := (k - p.k0) * p.length
+	density := math.Sqrt(2/math.Pi) * p.length * math.Exp(-2*d*d) * p.near.Mass / k
+	part := 1.0
+	for _, v := range []float64{p.averages.Transmitted.Value, p.averages.Reflected.Value} {
+		if v > leastPart {
+			part = math.Min(part, v)
+		}
+	}
+	var goals []propagate.EdgeGoal
+	for e := (p.High - p.Low) / 16; e > closest*(p.High-p.Low); e /= 4 {
+		goals = append(goals, propagate.EdgeGoal{Energy: lead.Height + e, Weight: e * density / part})
+	}
+	return goals
 }

@@ -157,6 +157,8 @@ func (t *Trial) averageArrivals() (transmitted, reflected stationary.Mean) {
 func averageArrivals(a *stationary.Averages, g geometry) (transmitted, reflected stationary.Mean) {
 	if a.Transmitted.Value > 0 {
 		transmitted = combine(a.GroupDelayTransmitted, g.start, a.SlownessInTransmitted, g.far, a.SlownessOutTransmitted)
+		transmitted.Value -= g.beyond.Value / a.Transmitted.Value
+		transmitted.Error += g.beyond.Error / a.Transmitted.Value
 	}
 	if a.Reflected.Value > 0 {
 		reflected = combine(a.GroupDelayReflected, g.start+g.near, a.SlownessInReflected, 0, stationary.Mean{})

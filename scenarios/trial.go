@@ -23,8 +23,9 @@ type Trial struct {
 	Refused   error                 // why it was refused: a *LimitError
 	started   time.Time
 	forced    Forced
-	unsettled error    // the averages' own complaint, if any
-	slow      errorSet // the tail when the step was first allowed to grow
+	beyond    stationary.Mean // time that a closed far lead takes back, see stationary.Solver.Beyond
+	unsettled error           // the averages' own complaint, if any
+	slow      errorSet        // the tail when the step was first allowed to grow
 }
 
 // Prepare computes the plane-wave and average columns and plans the packet
@@ -46,6 +47,9 @@ func Prepare(ctx context.Context, s *Scenario, forced Forced) (*Trial, error) {
 		return nil, ctx.Err()
 	}
 	t.Averages, t.unsettled = averages, err
+	if t.beyond, err = solver.Beyond(spectrum, s.farDistance()); err != nil {
+		return nil, fmt.Errorf("average: %w", err)
+	}
 	if err := t.plan(); err != nil {
 		var limit *LimitError
 		if !errors.As(err, &limit) {
@@ -59,7 +63,7 @@ func Prepare(ctx context.Context, s *Scenario, forced Forced) (*Trial, error) {
 // plan makes the plan and the run.
 func (t *Trial) plan() error {
 	var err error
-	if t.Plan, err = newPlan(t.Scenario, t.Averages, t.forced); err != nil {
+	if t.Plan, err = newPlan(t.Scenario, t.Averages, t.beyond, t.forced); err != nil {
 		return err
 	}
 	p := t.Plan
