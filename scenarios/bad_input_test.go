@@ -364,8 +364,8 @@ func layered(n int) string {
 		strings.Repeat("[[layer]]\nthickness = \"1 nm\"\nheight = \"5 meV\"\n", n)
 }
 
-func TestHundredThousandLayers(t *testing.T) {
-	text := layered(100_000)
+func TestManyLayers(t *testing.T) {
+	text := layered(20_000)
 	began := time.Now()
 	f, err := Read("many.toml", strings.NewReader(text), nil)
 	if err != nil {
@@ -378,11 +378,11 @@ func TestHundredThousandLayers(t *testing.T) {
 	if took := time.Since(began); took > 5*time.Second { // 0.5 s on an idle machine
 		t.Errorf("took %v", took)
 	}
-	if len(s.Structure.Segments) != 100_000 {
+	if len(s.Structure.Segments) != 20_000 {
 		t.Errorf("%d segments", len(s.Structure.Segments))
 	}
-	err = readAndCompile("many.toml", layered(100_001))
-	checkInputError(t, err, "many.toml", "300006:3", "layer", "there are 100001 of them", "up to 100000 layers")
+	err = readAndCompile("many.toml", layered(100_000))
+	checkInputError(t, err, "many.toml", "60006:3", "layer", "there are 100000 of them", "up to 20000 layers")
 }
 
 func TestInlineLayersInOneLine(t *testing.T) {
@@ -401,11 +401,11 @@ func TestInlineLayersInOneLine(t *testing.T) {
 func TestTooManyRows(t *testing.T) {
 	var csv strings.Builder
 	csv.WriteString("x [nm], height [meV]\n")
-	for i := range 60_000 {
+	for i := range 12_000 {
 		fmt.Fprintf(&csv, "%d, 1\n", i)
 	}
 	files := fstest.MapFS{"profile.csv": {Data: []byte(csv.String())}}
 	text := withTable + "[[layer]]\nshape = \"table\"\nfile = \"profile.csv\"\n"
 	_, err := Read("one.toml", strings.NewReader(text), Within(files, "."))
-	checkInputError(t, err, "one.toml", "11:8", "layer[1].file", "above the limit", "up to 100000 rows")
+	checkInputError(t, err, "one.toml", "11:8", "layer[1].file", "above the limit", "up to 20000 rows")
 }

@@ -164,10 +164,11 @@ func (t *Trial) averageTerm() errorSet {
 	}
 }
 
-// roundingTerm allows every solve one rounding (2^-53) in the norm, which
-// bounds the drift that the tests measure.
+// roundingTerm is what the ledger fails to close by, and a random walk of one
+// rounding (2^-53) for each solve and for each of the sums.
 func (t *Trial) roundingTerm() errorSet {
-	r := float64(t.Run.Ledger().Steps*t.Plan.Pade.Member+16) * 0x1p-53
+	solves := float64(t.Run.Ledger().Steps * t.Plan.Pade.Member)
+	r := math.Abs(t.ledger().Closure) + 4*math.Sqrt(solves+16)*0x1p-53
 	m := t.means()
 	return errorSet{
 		transmitted: r, reflected: r, lost: r, arrivalTransmitted: r * m.timeTransmitted,

@@ -46,14 +46,14 @@ func (p *planner) mismatch(g geometry) errorSet {
 	return e
 }
 
-// misplaced charges a probability to every part, at a time off by the whole
+// misplaced charges a probability to every part, at a time off by twice the
 // flight; what a bound state catches of it stays in the layers for as long.
 func (p *planner) misplaced(g geometry, probability float64) errorSet {
 	e := errorSet{
 		transmitted: probability, reflected: probability, lost: probability,
 	}
 	m := p.means(g)
-	flight := probability * math.Max(m.timeTransmitted, m.timeReflected)
+	flight := 2 * probability * math.Max(m.timeTransmitted, m.timeReflected)
 	if g.width > 0 {
 		e.dwell = flight
 	}
@@ -71,26 +71,36 @@ func (p *planner) means(g geometry) partMeans {
 	return timedMeans(p.averages, g)
 }
 
-// cutError is the error that one cut at distance d makes.
+// cutError is the error that one cut at distance d makes. The change of the
+// spectrum is averaged with its phase and the modulus taken at the end: what a
+// cut leaves over may meet the packet again with any phase.
 func (p *planner) cutError(g geometry, d float64) errorSet {
 	length, m := p.scenario.Packet.Length, p.means(g)
-	var sum errorSet
+	var second, in, quadrature errorSet
 	for _, n := range p.averages.Nodes {
 		z := complex(d/(2*length), (n.K-p.scenario.Packet.K0)*length)
 		c := erfc(z)
-		change := n.Weight * (square(c)/4 - real(c))
 		// A cut also moves the centre of the packet as a wave number sees it.
-		shift := n.Weight * real(cmplx.Exp(-z*z)) * length / math.SqrtPi / n.Amplitudes.SpeedIn
-		s := sample{Amplitudes: n.Amplitudes}
-		t, r := s.arrivals(g)
-		sum = sum.plus(errorSet{
-			transmitted: change * s.Transmission, reflected: change * s.Reflection,
-			lost: change * s.Absorption, dwell: change * s.Dwell,
-			arrivalTransmitted: s.Transmission * (change*(t-m.timeTransmitted) + shift),
-			arrivalReflected:   s.Reflection * (change*(r-m.timeReflected) + shift),
-		})
+		shift := cmplx.Exp(-z*z) * complex(length/math.SqrtPi/n.Amplitudes.SpeedIn, 0)
+		s := sample{Amplitudes: n.Amplitudes, weight: n.Weight}
+		second = second.plus(s.changed(g, m, square(c)/4, 0))
+		in = in.plus(s.changed(g, m, real(c), real(shift)))
+		quadrature = quadrature.plus(s.changed(g, m, imag(c), imag(shift)))
 	}
-	return sum.magnitudes(m)
+	return second.magnitudes(m).plus(in.magnitudes(m)).plus(quadrature.magnitudes(m))
+}
+
+// changed is what a relative change of this energy's weight, and a shift of
+// its time, do to the sums.
+func (s sample) changed(g geometry, m partMeans, change, shift float64) errorSet {
+	t, r := s.arrivals(g)
+	w := s.weight
+	return errorSet{
+		transmitted: w * change * s.Transmission, reflected: w * change * s.Reflection,
+		lost: w * change * s.Absorption, dwell: w * change * s.Dwell,
+		arrivalTransmitted: w * s.Transmission * (change*(t-m.timeTransmitted) + shift),
+		arrivalReflected:   w * s.Reflection * (change*(r-m.timeReflected) + shift),
+	}
 }
 
 // magnitudes makes every error positive and turns sums over a part into means.
@@ -153,7 +163,6 @@ func (p *planner) positions() {
 // excess is the start's error, less what no distance removes, as a multiple
 // of the tolerance.
 func (p *planner) excess() float64 {
-	m := p.means(p.geometry)
 	wrong := p.misplaced(p.geometry, wrongWay(p.scenario.Packet))
-	return p.start0.of(p.scenario, p.averages, m) - wrong.of(p.scenario, p.averages, m)
+	return p.weight(p.start0) - p.weight(wrong)
 }

@@ -55,8 +55,16 @@ const (
 )
 
 // leastPart is the smallest transmitted or reflected probability whose arrival
-// the packet road is asked to time: below it the part is rounding in psi.
-const leastPart = 1e-14
+// the packet road is asked to time: below it rounding in the sums weighs more
+// than the tolerance.
+const leastPart = 1e-12
+
+// smallPart is the relative accuracy that the plan, though not the verdict,
+// asks of a probability however small, and leastSmall the smallest.
+const (
+	smallPart  = 1e-4
+	leastSmall = 1e-15
+)
 
 // planner holds what the steps of planning share.
 type planner struct {
@@ -120,9 +128,7 @@ func (p *planner) grid() error {
 		}
 		grids := compareGrid(mesh, p.geometry, p.samples)
 		sampling := p.packet().SamplingError(mesh)
-		m := p.means(p.geometry)
-		worst := math.Max(grids.space.of(p.scenario, p.averages, m),
-			p.misplaced(p.geometry, sampling).of(p.scenario, p.averages, m))
+		worst := math.Max(p.weight(grids.space), p.weight(p.misplaced(p.geometry, sampling)))
 		if worst < best {
 			best, p.Mesh, p.grids, p.sampling = worst, mesh, grids, sampling
 		}
@@ -132,6 +138,20 @@ func (p *planner) grid() error {
 		p.Phase *= 0.75
 	}
 	return nil
+}
+
+// weight is an error as a multiple of what is allowed, a small part's own
+// accuracy included.
+func (p *planner) weight(e errorSet) float64 {
+	w := e.of(p.scenario, p.averages, p.means(p.geometry))
+	for _, part := range [][2]float64{
+		{e.transmitted, p.averages.Transmitted.Value}, {e.reflected, p.averages.Reflected.Value},
+	} {
+		if part[1] > leastSmall {
+			w = math.Max(w, part[0]/(smallPart*part[1]))
+		}
+	}
+	return w
 }
 
 // packet is the packet as the packet road takes it.

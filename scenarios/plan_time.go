@@ -11,8 +11,11 @@ import (
 func (p *planner) time() error {
 	p.Expected = p.expectedEnd()
 	lowest, highest := 1, propagate.MaxPade
-	if p.forced.Pade > 0 {
+	switch {
+	case p.forced.Pade > 0:
 		lowest, highest = p.forced.Pade, p.forced.Pade
+	case p.forced.TimeStep > 0:
+		lowest = highest // the step is given: the most exact member
 	}
 	cheapest := math.Inf(1)
 	// Even members leave waves far above the band at rest (their factor tends
@@ -131,7 +134,7 @@ func (p *planner) heldBy(energy, width float64) float64 {
 func (p *planner) affordable() error {
 	end := p.Expected
 	if p.forced.StopTime > 0 {
-		end = math.Min(end, p.forced.StopTime)
+		end = p.forced.StopTime
 	}
 	steps := end / p.TimeStep
 	if steps > float64(p.forced.Steps) {

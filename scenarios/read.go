@@ -9,7 +9,7 @@ import (
 )
 
 // mostLayers bounds the layers of a scenario, and the rows of its tables.
-const mostLayers = 100_000
+const mostLayers = 20_000
 
 // Read reads a scenario. Messages call it by name; open finds the tables it
 // refers to, and may be nil where there are none. The error is an *InputError.
