@@ -23,9 +23,10 @@ type Trial struct {
 	Refused   error                 // why it was refused: a *LimitError
 	started   time.Time
 	forced    Forced
-	beyond    stationary.Mean // time that a closed far lead takes back, see stationary.Solver.Beyond
-	unsettled error           // the averages' own complaint, if any
-	slow      errorSet        // the tail when the step was first allowed to grow
+	beyond    stationary.Mean   // time that a closed far lead takes back, see stationary.Solver.Beyond
+	unsettled error             // the averages' own complaint, if any
+	slow      errorSet          // the tail when the step was first allowed to grow
+	record    *propagate.Record // what passed the planes, step by step
 }
 
 // Prepare computes the plane-wave and average columns and plans the packet
@@ -72,6 +73,7 @@ func (t *Trial) plan() error {
 		return err
 	}
 	t.Run = propagate.NewRun(stepper, t.ending())
+	t.record = t.Run.Record()
 	return nil
 }
 

@@ -1,0 +1,167 @@
+package propagate
+
+import (
+	"math"
+	"math/cmplx"
+)
+
+// Component is the part of a wave at a plane that has one energy.
+type Component struct {
+	// Amplitude is a(E) of psi(t) = integral of a(E) exp(-iEt) dE.
+	Amplitude complex128
+	// Time is d(arg a)/dE: when this energy passes the plane.
+	Time float64
+	// Open bounds the error of Amplitude by what the record ends before:
+	// what had not passed when it ended, and what was left out where the step
+	// grew. Late is when that passes, as a time that goes with Open.
+	Open, Late float64
+}
+
+// At takes one energy out of the wave at the left or the right plane. The wave
+// is
+//
+//	psi_n = integral of a(E) exp(-i n theta(E)) dE,
+//
+// theta(E) = Pade.Phase((E-origin) dt) the phase of the very step, so that
+//
+//	a(E) = theta'(E)/(2 pi) sum over n of psi_n exp(i n theta(E))
+//
+// undoes the time steps exactly: no error of the step is left, as long as no
+// two energies of the wave share a phase (dt times its band below 2 pi). Where
+// the step grows, both sides count half of the sample they share. After the
+// last sample the wave is continued as it fell at last; all of that is counted
+// in Open.
+func (r *Record) At(energy float64, right bool) Component {
+	s := inversion{pade: r.Pade, energy: energy}
+	for i := range r.Stretches {
+		last := i == len(r.Stretches)-1
+		if !s.add(&r.Stretches[i], r.Stretches[i].trace(right).Psi, i == 0) {
+			s.rest(r.Stretches[i-1:])
+			break
+		}
+		if last {
+			s.rest(r.Stretches[i:])
+		}
+	}
+	return s.component()
+}
+
+// inversion sums one energy out of a record.
+type inversion struct {
+	pade        Pade
+	energy      float64
+	sum, moment complex128 // of psi exp(i phase), without and with the time
+	phase, time float64    // of the energy at the last sample, by the steps
+	open, late  float64
+	last        [2]complex128 // the last two samples
+	step, slope float64       // of the last stretch that was added
+	theta       float64
+}
+
+// add adds a stretch. It refuses one whose steps are too long for the energy,
+// unless it is the first.
+func (s *inversion) add(part *Stretch, psi []complex128, first bool) bool {
+	theta, slope := s.pade.Phase((s.energy - part.Origin) * part.Step)
+	if math.Abs(theta) >= math.Pi && !first {
+		return false
+	}
+	slope *= part.Step
+	weight := complex(slope, 0)
+	turn, factor := cmplx.Exp(complex(0, theta)), cmplx.Exp(complex(0, s.phase))
+	if !first {
+		s.shared(part, psi[0])
+	}
+	for n, v := range psi {
+		w := v * factor
+		if n == 0 && !first || n == len(psi)-1 {
+			w /= 2
+		}
+		s.sum += weight * w
+		s.moment += weight * w * complex(s.time+float64(n)*slope, 0)
+		factor *= turn
+	}
+	n := len(psi) - 1
+	s.phase += float64(n) * theta
+	s.time += float64(n) * slope
+	s.last = [2]complex128{psi[max(0, n-1)], psi[n]}
+	s.step, s.slope, s.theta = part.Step, slope, theta
+	return true
+}
+
+// shared charges the sample that two stretches share: by the Euler-Maclaurin
+// sum formula (M. Abramowitz and I. A. Stegun, Handbook of Mathematical
+// Functions, 23.1.30) the two halves differ from an integral by
+// (dt^2 - dt'^2)/12 of the derivative there.
+func (s *inversion) shared(part *Stretch, psi complex128) {
+	s.charge(part.Step*part.Step/12*math.Abs(s.energy-part.Origin)*cmplx.Abs(psi), s.time)
+}
+
+func (s *inversion) charge(open, time float64) {
+	s.open += open
+	s.late += open * math.Abs(time)
+}
+
+// rest continues the wave after the last sample added as it fell at last, a
+// geometric series, of which half the first term is in the sum already. Where
+// the next stretch was refused its origin tells the energy of what is left.
+func (s *inversion) rest(parts []Stretch) {
+	v := s.last[1]
+	if v == 0 {
+		return
+	}
+	ratio := s.fall()
+	if len(parts) > 1 {
+		theta, _ := s.pade.Phase((parts[1].Origin - parts[0].Origin) * s.step)
+		ratio = cmplx.Exp(complex(0, -theta))
+	}
+	z := ratio * cmplx.Exp(complex(0, s.theta))
+	const nearest = 1e-3 // of a phase: beyond it the record says nothing
+	if d := cmplx.Abs(1 - z); d < nearest {
+		z = 1 - nearest
+	}
+	more := complex(s.slope, 0) * v * cmplx.Exp(complex(0, s.phase)) * (1/(1-z) - 0.5)
+	later := s.time + s.slope/cmplx.Abs(1-z)
+	s.sum += more
+	s.moment += more * complex(s.time, 0)
+	s.charge(cmplx.Abs(more), later)
+}
+
+// fall is the last ratio of two samples, at most 1 in modulus.
+func (s *inversion) fall() complex128 {
+	if s.last[0] == 0 {
+		return 0
+	}
+	q := s.last[1] / s.last[0]
+	if a := cmplx.Abs(q); a > 1 {
+		q /= complex(a, 0)
+	}
+	return q
+}
+
+// component is what the sums amount to.
+func (s *inversion) component() Component {
+	const turn = 2 * math.Pi
+	c := Component{Amplitude: s.sum / turn, Open: s.open / turn}
+	if s.sum != 0 {
+		c.Time = real(s.moment / s.sum)
+	}
+	if s.open > 0 {
+		c.Late = s.late / s.open
+	}
+	return c
+}
+
+// Energy inverts Pade.Phase: the y with Phase(y) = theta, for |theta| below
+// the member times pi.
+func (p Pade) Energy(theta float64) float64 {
+	y := theta
+	for range 60 {
+		t, slope := p.Phase(y)
+		step := (t - theta) / slope
+		y -= math.Max(-2, math.Min(2, step))
+		if math.Abs(step) <= 1e-15*(1+math.Abs(y)) {
+			break
+		}
+	}
+	return y
+}
