@@ -75,9 +75,13 @@ func (p *planner) means(g geometry) partMeans {
 // spectrum is averaged with its phase and the modulus taken at the end: what a
 // cut leaves over may meet the packet again with any phase.
 func (p *planner) cutError(g geometry, d float64) errorSet {
+	const lightest = 1e-280 // beyond it erfc overflows, and misplaced charges what is left
 	length, m := p.scenario.Packet.Length, p.means(g)
 	var second, in, quadrature errorSet
 	for _, n := range p.averages.Nodes {
+		if n.Weight < lightest {
+			continue
+		}
 		z := complex(d/(2*length), (n.K-p.scenario.Packet.K0)*length)
 		c := erfc(z)
 		// A cut also moves the centre of the packet as a wave number sees it.

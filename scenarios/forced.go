@@ -19,13 +19,13 @@ type Limits struct {
 	Bytes int // memory of the matrices, bytes
 }
 
-// Default limits: a run within them ends in minutes on one core.
+// Default limits: a run within them ends in a few minutes on one core.
 const (
-	DefaultNodes = 2_000_000
+	DefaultNodes = 4_000_000
 	DefaultSteps = 2_000_000
 	DefaultBytes = 4 << 30
-	// defaultWork bounds nodes x steps x factors: about 20 minutes.
-	defaultWork = 4e10
+	// defaultWork bounds nodes x steps x factors: a minute or two.
+	defaultWork = 1e10
 )
 
 func (l Limits) orDefault() Limits {

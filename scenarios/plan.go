@@ -20,6 +20,7 @@ type Plan struct {
 	TimeStep  float64
 	Origin    float64 // energy from which phases are counted
 	Expected  float64 // time at which the run is expected to end
+	MostSteps int     // step limit of the run
 	Mesh      *propagate.Mesh
 
 	k0, length float64 // of the packet

@@ -137,12 +137,17 @@ func (p *planner) affordable() error {
 		end = p.forced.StopTime
 	}
 	steps := end / p.TimeStep
-	if steps > float64(p.forced.Steps) {
-		return &LimitError{"time steps", steps, float64(p.forced.Steps), "--max-steps"}
+	p.MostSteps = p.forced.Steps
+	if steps > float64(p.MostSteps) {
+		return &LimitError{"time steps", steps, float64(p.MostSteps), "--max-steps"}
 	}
-	work := steps * float64(p.Pade.Member) * float64(p.Mesh.Nodes())
-	if p.forced.Limits.Steps == DefaultSteps && work > defaultWork {
+	if p.forced.Limits.Steps != DefaultSteps {
+		return nil
+	}
+	each := float64(p.Pade.Member * p.Mesh.Nodes())
+	if work := steps * each; work > defaultWork {
 		return &LimitError{"node solves", work, defaultWork, "--max-steps"}
 	}
+	p.MostSteps = min(p.MostSteps, int(math.Max(defaultWork/each, 1)))
 	return nil
 }

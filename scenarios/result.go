@@ -102,23 +102,24 @@ func (t *Trial) Result(status propagate.Status) *Result {
 	return r
 }
 
-// verdict reads the outcome off the quantities.
+// verdict reads the outcome off the quantities. A run that was cut short has
+// no final budget: it cannot disagree.
 func (t *Trial) verdict(r *Result, status propagate.Status) Verdict {
-	if status == propagate.Interrupted || status == propagate.Running && t.Run != nil {
+	switch {
+	case status == propagate.Interrupted || status == propagate.Running && t.Run != nil:
 		return Incomplete
+	case status != propagate.Settled || t.unsettled != nil:
+		return NotReached
 	}
 	verdict := Agrees
-	if t.Run == nil || t.unsettled != nil {
-		verdict = NotReached
-	}
 	for _, q := range r.Quantities {
-		if q.Budget == nil {
-			continue
-		}
-		if !(math.Abs(*q.Difference) <= *q.Budget) {
+		switch {
+		case q.Agrees:
+		case q.Budget == nil || q.Difference == nil:
+			verdict = NotReached
+		case math.Abs(*q.Difference) > *q.Budget:
 			return Disagrees
-		}
-		if !(*q.Budget <= q.Allowed) {
+		default:
 			verdict = NotReached
 		}
 	}

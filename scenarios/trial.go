@@ -80,7 +80,7 @@ func (t *Trial) plan() error {
 // ending ends the run when what remains is below its share of the budget.
 func (t *Trial) ending() propagate.Ending {
 	e := propagate.Ending{
-		Steps: t.forced.orDefault().Steps, Time: math.Inf(1),
+		Steps: t.Plan.MostSteps, Time: math.Inf(1),
 		Settled: func(l *propagate.Ledger, remaining, lifetime float64) bool {
 			tail := t.tail(l, remaining, lifetime)
 			return tail.of(t.Scenario, t.Averages, t.means()) <= shareTail
