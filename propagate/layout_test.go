@@ -235,12 +235,16 @@ func TestBytes(t *testing.T) {
 			t.Fatal(err)
 		}
 		var before, after runtime.MemStats
+		runtime.GC()
 		runtime.ReadMemStats(&before)
-		if _, err := NewStepper(NewMesh(l), pade(t, MaxPade), 0.5, 2, s.packet); err != nil {
+		stepper, err := NewStepper(NewMesh(l), pade(t, MaxPade), 0.5, 2, s.packet)
+		if err != nil {
 			t.Fatal(err)
 		}
+		runtime.GC()
 		runtime.ReadMemStats(&after)
-		taken := float64(after.TotalAlloc - before.TotalAlloc) // scratch included
+		taken := float64(after.HeapAlloc - before.HeapAlloc)
+		runtime.KeepAlive(stepper)
 		if bytes := l.Bytes(); !(bytes > taken/4 && bytes < 2*taken) {
 			t.Errorf("%s: estimated %.0f bytes, took %.0f", name, bytes, taken)
 		}

@@ -65,7 +65,6 @@ func (p *pencil) addModes(basis []base) {
 	}
 	var vectors mat.Dense
 	eig.VectorsTo(&vectors)
-	p.lambda = append(p.lambda, eig.Values(nil)...)
 	for j := range n {
 		v := make([]float64, p.order-1)
 		for b, base := range basis {
@@ -89,16 +88,29 @@ func (p *pencil) between(a, b base) float64 {
 	return total
 }
 
-// addMode appends a mode and its coupling to the faces.
+// addMode appends a mode, its eigenvalue and its coupling to the faces. Both are
+// taken from the mode's slope, as sums of terms that do not cancel: the
+// eigenproblem leaves in every eigenvalue the rounding of the largest, some
+// p^2 times that of the waves an element is there to carry.
 func (p *pencil) addMode(v []float64) {
-	left, right := 0.0, 0.0
+	energy, norm, left, right := 0.0, 0.0, 0.0, 0.0
+	for q, w := range p.kinetic {
+		slope := 0.0
+		for i, x := range v {
+			slope += p.diff[q][i+1] * x
+		}
+		energy += w * slope * slope
+		left += w * p.diff[q][0] * slope
+		right += w * p.diff[q][p.order] * slope
+	}
 	for i, x := range v {
-		left += p.stiff[0][i+1] * x
-		right += p.stiff[p.order][i+1] * x
+		energy += p.mass[i+1] * p.height[i+1] * x * x
+		norm += p.mass[i+1] * x * x
 	}
 	if p.mirror {
 		right = math.Copysign(left, right)
 	}
+	p.lambda = append(p.lambda, energy/norm)
 	p.modes = append(p.modes, v)
 	p.couple[0] = append(p.couple[0], left)
 	p.couple[1] = append(p.couple[1], right)

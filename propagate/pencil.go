@@ -20,6 +20,9 @@ type pencil struct {
 	modes  [][]float64  // modes[j][i]: mode j at interior node i
 	couple [2][]float64 // couple[f][j] = stiff_fi v_j, f = 0 left, 1 right
 
+	kinetic []float64 // w_q/(2 m_q h): the stiffness is sum_q kinetic_q D_qi D_qj
+	height  []float64 // plus mass_i height_i on the diagonal
+
 	// mirror says that the element is its own mirror image. Its modes 0 to
 	// even-1 are then even and the others odd, exactly: couple[1][j] is
 	// couple[0][j] for the former and -couple[0][j] for the latter.
@@ -57,14 +60,14 @@ func assemblePencil(r *rule, h float64, u, m []float64) *pencil {
 		p.stiff[i] = make([]float64, n)
 		p.mass[i] = h * r.weights[i]
 	}
-	weight := make([]float64, n)
-	for q := range weight {
-		weight[q] = r.weights[q] / (2 * h * m[q])
+	p.kinetic, p.height = make([]float64, n), u
+	for q := range p.kinetic {
+		p.kinetic[q] = r.weights[q] / (2 * h * m[q])
 	}
 	for i := range n {
 		for j := range i {
 			v := 0.0
-			for q, w := range weight {
+			for q, w := range p.kinetic {
 				v += w * r.diff[q][i] * r.diff[q][j]
 			}
 			p.stiff[i][j], p.stiff[j][i] = v, v
