@@ -19,6 +19,10 @@ type Eigenstate struct {
 	Norm     complex128 // u^T M u, edges included
 	Residual float64    // norm of M^-1 (H - Energy M) u between the planes, u of norm 1 there: an energy
 
+	// EnergyError and WidthError are by how much rounding may move Energy and
+	// Width, measured.
+	EnergyError, WidthError float64
+
 	mesh *Mesh
 	wave
 	left, right rim
@@ -50,7 +54,7 @@ func (m *Mesh) Eigenstate(guess complex128) (*Eigenstate, error) {
 		energy += step
 		// Once small and no longer shrinking, steps are rounding.
 		if size <= 1e-15*cmplx.Abs(energy) || size <= 1e-9*cmplx.Abs(energy) && size >= last/2 {
-			return s.state(energy), nil
+			return s.found(energy, size), nil
 		}
 		last = size
 	}
@@ -63,6 +67,13 @@ func (m *Mesh) Eigenstate(guess complex128) (*Eigenstate, error) {
 // state it is 0 but for rounding.
 func (u *Eigenstate) Width() float64 {
 	return (u.FlowLeft() + u.FlowRight() + u.Absorbed()) / u.Inside()
+}
+
+// Bound reports whether nothing can leave the state: both leads are closed at
+// its energy, and no layer absorbs.
+func (u *Eigenstate) Bound() bool {
+	s := u.mesh.layout.structure
+	return real(u.Energy) < math.Min(s.Entry.Height, s.Exit.Height) && u.Absorbed() == 0
 }
 
 // Inside is the integral of |u|^2 between the planes.
@@ -196,8 +207,19 @@ func (s *eigenSolver) norm() complex128 {
 	return total
 }
 
-// state makes the eigenstate of an energy that Newton's method has found,
-// scaled to norm 1 between the planes.
+// found makes the eigenstate of the energy at which Newton's method ended, with
+// steps of the given size. The width is made again with an energy that is off
+// by as much as the true one may be.
+func (s *eigenSolver) found(energy complex128, size float64) *Eigenstate {
+	const rounding = 64 * 0x1p-53 // sums over an element, of terms some hundred times the energy
+	off := size + rounding*cmplx.Abs(energy)
+	u, moved := s.state(energy), s.state(energy+complex(off, 0))
+	u.EnergyError = off
+	u.WidthError = 2 * math.Abs(moved.Width()-u.Width())
+	return u
+}
+
+// state makes the eigenstate of an energy, scaled to norm 1 between the planes.
 func (s *eigenSolver) state(energy complex128) *Eigenstate {
 	m := s.mesh
 	s.step(energy)

@@ -66,6 +66,9 @@ func newLedger(m *Mesh, psi wave) Ledger {
 	return l
 }
 
+// forgotten is the part of a peak that is remembered a step later.
+const forgotten = 0.8
+
 // enter books one step.
 func (l *Ledger) enter(dt, left, right float64, lost []float64) {
 	mid := l.Time + dt/2
@@ -75,7 +78,7 @@ func (l *Ledger) enter(dt, left, right float64, lost []float64) {
 		l.Lost[i] += v
 	}
 	l.FlowLeft, l.FlowRight = left/dt, right/dt
-	l.FlowPeak = max(math.Abs(l.FlowLeft), math.Abs(l.FlowRight), 0.8*l.FlowPeak)
+	l.FlowPeak = max(math.Abs(l.FlowLeft), math.Abs(l.FlowRight), forgotten*l.FlowPeak)
 	l.Steps++
 	l.Time = l.since + float64(l.Steps-l.sinceSteps)*dt
 }

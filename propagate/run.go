@@ -17,6 +17,10 @@ type Ending struct {
 	// Slow, if not nil, is asked after Settled: is what remains so little
 	// that the run may go on in longer steps (Stepper.Lengthen)?
 	Slow func(l *Ledger, remaining, lifetime float64) bool
+	// States, if any, are eigenstates that the run need not wait for: what
+	// remains, and what Settled is asked about, is then what they do not
+	// span; and a run that is settled is finished by their Tail.
+	States []*Eigenstate
 	// Watch, if not nil, is called after every step.
 	Watch func(l *Ledger)
 }
@@ -28,7 +32,10 @@ const checkEvery = 4
 type look struct {
 	Remaining float64 // that probability
 	Lifetime  float64 // time in which it fell by a factor e; +Inf where it did not fall
+	Flow      float64 // Ledger.FlowPeak, but for what the states send
+	Cross     float64 // interference of what remains with the states, see Tail.Cross; its peak of late, forgotten like FlowPeak
 	time      float64
+	tail      *Tail // of a settled run
 }
 
 // firstLook is the look before any was taken.
@@ -40,7 +47,7 @@ func (l look) next(remaining, time float64) look {
 	if time == l.time {
 		return l
 	}
-	n := look{Remaining: remaining, Lifetime: math.Inf(1), time: time}
+	n := look{Remaining: remaining, Lifetime: math.Inf(1), Flow: l.Flow, Cross: l.Cross, time: time}
 	if remaining < l.Remaining {
 		n.Lifetime = (time - l.time) / math.Log(l.Remaining/remaining)
 	}
@@ -52,12 +59,17 @@ func (l look) next(remaining, time float64) look {
 type Run struct {
 	*Stepper
 	look
-	ending Ending
+	ending   Ending
+	splitter *splitter // nil without States
 }
 
 // NewRun sets a stepper on its way.
 func NewRun(s *Stepper, e Ending) *Run {
-	return &Run{Stepper: s, ending: e, look: firstLook()}
+	r := &Run{Stepper: s, ending: e, look: firstLook()}
+	if len(e.States) > 0 {
+		r.splitter = newSplitter(s.Mesh, e.States)
+	}
+	return r
 }
 
 // Next takes one step and says whether the run is over. A run that is settled
@@ -72,6 +84,7 @@ func (r *Run) Next() Status {
 	if l.Steps%checkEvery == 0 || limit != Running {
 		r.inspect()
 		if r.ending.Settled != nil && r.ending.Settled(l, r.Remaining, r.Lifetime) {
+			r.finish()
 			return Settled
 		}
 		if r.ending.Slow != nil && r.ending.Slow(l, r.Remaining, r.Lifetime) {
@@ -93,7 +106,59 @@ func (r *Run) limit() Status {
 }
 
 // inspect looks at what remains and how fast it falls.
-func (r *Run) inspect() { r.look = r.next(r.Inside(), r.Ledger().Time) }
+func (r *Run) inspect() {
+	l := r.Ledger()
+	if r.splitter == nil {
+		r.look = r.next(r.Inside(), l.Time)
+		r.Flow = l.FlowPeak
+		return
+	}
+	r.splitter.split(r.psi)
+	rest, cross := r.splitter.remaining()
+	flow := math.Max(
+		math.Abs(l.FlowLeft-r.splitter.flow(r.Step, false)),
+		math.Abs(l.FlowRight-r.splitter.flow(r.Step, true)),
+	)
+	r.look = r.next(rest, l.Time)
+	fade := math.Pow(forgotten, checkEvery)
+	r.Flow = math.Max(flow, fade*r.Flow)
+	r.Cross = math.Max(cross, fade*r.Cross)
+}
+
+// finish makes the tail of the look just taken.
+func (r *Run) finish() {
+	if r.splitter != nil {
+		r.tail = r.splitter.tail(r.Ledger().Time)
+	}
+}
+
+// Tail is what the states of a settled run still do after its last step; nil
+// for a run without states, or one that has not settled.
+func (r *Run) Tail() *Tail { return r.tail }
+
+// Booked is the ledger with the tail, if there is one.
+func (r *Run) Booked() *Ledger {
+	l := r.Ledger()
+	if r.tail == nil {
+		return l
+	}
+	c := l.Clone()
+	c.Left, c.Right = c.Left.Plus(r.tail.Left), c.Right.Plus(r.tail.Right)
+	for i := range c.Lost {
+		c.Lost[i] += r.tail.Lost[i]
+		c.Dwell[i] += r.tail.Dwell[i]
+	}
+	return &c
+}
+
+// Trapped is the probability that is left between the planes, after the tail
+// if there is one.
+func (r *Run) Trapped() float64 {
+	if r.tail == nil {
+		return r.Inside()
+	}
+	return r.tail.Trapped()
+}
 
 // Finish steps until the run is over or the context is done.
 func (r *Run) Finish(ctx context.Context) Status {

@@ -1,0 +1,203 @@
+package propagate
+
+import (
+	"math"
+	"math/cmplx"
+)
+
+// Tail is what eigenstates of a wave will still send out, lose and hold from a
+// moment on, in closed form. With psi = sum_i c_i u_i + rest,
+// c_i = u_i^T M psi/(u_i^T M u_i), and lambda_ij = i (E_j - conj E_i), a
+// form f (flow through a plane, absorption or probability in a layer) of what
+// the states make up goes in time as
+//
+//	sum_ij conj(c_i) c_j f(u_i, u_j) exp(-lambda_ij t),
+//
+// pairs, which interfere, included. Its integral over time has 1/lambda
+// instead of the exponential, its first moment 1/lambda^2. Bound states stay.
+type Tail struct {
+	Time        float64 // the moment
+	Held        []Held  // the states
+	Left, Right Passage // what will pass the planes
+	Lost        []float64
+	Dwell       []float64
+	Rest        float64 // probability between the planes of what the states do not span
+	Cross       float64 // what rest and states have between the planes by interfering, each state's modulus: nobody's yet
+	Error       TailError
+}
+
+// Held is what a state holds at the moment of the tail.
+type Held struct {
+	State       *Eigenstate
+	Amplitude   complex128
+	Probability float64 // between the planes, of the state alone
+	Bound       bool
+}
+
+// TailError bounds the error of a tail, from what is known of the eigenpairs.
+type TailError struct {
+	Probability           float64 // of each probability
+	FirstLeft, FirstRight float64 // of the flux-weighted sums of times
+	Dwell                 float64
+}
+
+// splitter splits waves of one mesh into eigenstates and a rest.
+type splitter struct {
+	mesh   *Mesh
+	states []*Eigenstate
+	c      []complex128
+	rest   wave
+}
+
+func newSplitter(m *Mesh, states []*Eigenstate) *splitter {
+	return &splitter{mesh: m, states: states, c: make([]complex128, len(states)), rest: newWave(m)}
+}
+
+// split takes the states off psi one after the other, so that what one of them
+// leaves of another by rounding is taken by that.
+func (p *splitter) split(psi wave) {
+	copy(p.rest.all, psi.all)
+	clear(p.c)
+	for range 2 {
+		for i, u := range p.states {
+			c := p.mesh.product(u.wave, p.rest) / u.Norm
+			p.c[i] += c
+			for n, v := range u.all {
+				p.rest.all[n] -= c * v
+			}
+		}
+	}
+}
+
+// remaining is the probability between the planes of the rest, and the modulus
+// of what it adds to that of the states by interference.
+func (p *splitter) remaining() (rest, cross float64) {
+	m := p.mesh
+	for i, u := range p.states {
+		cross += 2 * cmplx.Abs(p.c[i]*m.overlap(m.left, m.right, p.rest, u.wave))
+	}
+	return m.norm(m.left, m.right, p.rest), cross
+}
+
+// flow is the mean flow through a plane over the last step that belongs to the
+// states.
+func (p *splitter) flow(dt float64, right bool) float64 {
+	total := 0.0
+	for i, u := range p.states {
+		for j, v := range p.states[:i+1] {
+			x := complex(dt, 0) * rate(u, v)
+			mean := complex(1, 0)
+			if cmplx.Abs(x) > 1e-8 {
+				mean = (cmplx.Exp(x) - 1) / x
+			}
+			f := u.left.flow(v.left)
+			if right {
+				f = u.right.flow(v.right)
+			}
+			total += twice(i, j) * real(cmplx.Conj(p.c[i])*p.c[j]*f*mean)
+		}
+	}
+	return total
+}
+
+// twice counts pairs of different states in both orders.
+func twice(i, j int) float64 {
+	if i == j {
+		return 1
+	}
+	return 2
+}
+
+// rate is lambda of a pair. Its real part is taken from the widths, which are
+// exact to their last digits where imaginary parts of energies are not.
+func rate(u, v *Eigenstate) complex128 {
+	return complex((u.Width()+v.Width())/2, real(v.Energy)-real(u.Energy))
+}
+
+// tail closes the split: what the states will still do.
+func (p *splitter) tail(time float64) *Tail {
+	m := p.mesh
+	t := &Tail{
+		Time: time, Lost: make([]float64, len(m.layerSpan)), Dwell: make([]float64, len(m.layerSpan)),
+	}
+	t.Rest, t.Cross = p.remaining()
+	for i, u := range p.states {
+		t.Held = append(t.Held, Held{u, p.c[i], square(p.c[i]) * u.Inside(), u.Bound()})
+	}
+	for i := range p.states {
+		for j := range i + 1 {
+			if !t.Held[i].Bound || !t.Held[j].Bound {
+				t.pair(i, j)
+			}
+		}
+	}
+	return t
+}
+
+// pair adds what two states do together, or one with itself.
+func (t *Tail) pair(i, j int) {
+	u, v := t.Held[i].State, t.Held[j].State
+	lambda := rate(u, v)
+	a := cmplx.Conj(t.Held[i].Amplitude) * t.Held[j].Amplitude * complex(twice(i, j), 0)
+	doubt := t.doubt(i, j)
+	left, right := a*u.left.flow(v.left), a*u.right.flow(v.right)
+	t.Left.collect(t.Time, left, lambda)
+	t.Right.collect(t.Time, right, lambda)
+	passed := cmplx.Abs(left/lambda) + cmplx.Abs(right/lambda)
+	size := func(f complex128) float64 { return doubt * (cmplx.Abs(f/lambda)*t.Time + 2*cmplx.Abs(f/lambda/lambda)) }
+	t.Error.FirstLeft += size(left)
+	t.Error.FirstRight += size(right)
+	for n, span := range u.mesh.layerSpan {
+		t.Lost[n] += real(a * u.mesh.absorption(n, u.wave, v.wave) / lambda)
+		d := a * u.mesh.overlap(span[0], span[1], u.wave, v.wave) / lambda
+		t.Dwell[n] += real(d)
+		t.Error.Dwell += doubt * cmplx.Abs(d)
+		passed += cmplx.Abs(a * u.mesh.absorption(n, u.wave, v.wave) / lambda)
+	}
+	t.Error.Probability += doubt * passed
+}
+
+// doubt is the relative error of what a pair does: of the rates, by the
+// uncertainty of its energies and widths, and of the mixing of the two
+// states, by how far they are from orthogonal.
+func (t *Tail) doubt(i, j int) float64 {
+	u, v := t.Held[i].State, t.Held[j].State
+	if i == j {
+		return u.WidthError / u.Width()
+	}
+	mixed := cmplx.Abs(u.mesh.product(u.wave, v.wave)) / math.Sqrt(cmplx.Abs(u.Norm*v.Norm))
+	return mixed + (u.EnergyError+v.EnergyError)/cmplx.Abs(rate(u, v))
+}
+
+// collect adds a flow f exp(-lambda t) that begins at a time.
+func (p *Passage) collect(time float64, f, lambda complex128) {
+	q := real(f / lambda)
+	first := real(f / (lambda * lambda))
+	second := 2 * real(f/(lambda*lambda*lambda))
+	p.Probability += q
+	p.flux += q
+	p.first += time*q + first
+	p.second += time*time*q + 2*time*first + second
+}
+
+// Plus is what has passed in two passages.
+func (p Passage) Plus(o Passage) Passage {
+	return Passage{p.Probability + o.Probability, p.flux + o.flux, p.first + o.first, p.second + o.second}
+}
+
+// TotalLost is what all layers will absorb.
+func (t *Tail) TotalLost() float64 { return sum(t.Lost) }
+
+// TotalDwell is the time in all layers to come.
+func (t *Tail) TotalDwell() float64 { return sum(t.Dwell) }
+
+// Trapped is what stays between the planes: the bound states and the rest.
+func (t *Tail) Trapped() float64 {
+	total := t.Rest
+	for _, h := range t.Held {
+		if h.Bound {
+			total += h.Probability
+		}
+	}
+	return total
+}
