@@ -123,14 +123,15 @@ func (e errorSet) magnitudes(m partMeans) errorSet {
 
 func square(c complex128) float64 { return real(c)*real(c) + imag(c)*imag(c) }
 
-// erfc is the complementary error function for Re z >= 1, by the continued
-// fraction of M. Abramowitz and I. A. Stegun, Handbook of Mathematical
-// Functions, 7.1.14, evaluated from its tail.
+// erfc is the complementary error function for Re z >= 2, to 1e-6 of itself:
+// plenty for an error. It is the continued fraction of M. Abramowitz and
+// I. A. Stegun, Handbook of Mathematical Functions, 7.1.14, from its tail.
 func erfc(z complex128) complex128 {
-	const terms = 60
+	const terms = 12
 	f := z
 	for n := terms; n > 0; n-- {
-		f = z + complex(float64(n)/2, 0)/f
+		scale := float64(n) / 2 / square(f)
+		f = z + complex(scale*real(f), -scale*imag(f)) // z + (n/2)/f
 	}
 	return cmplx.Exp(-z*z) / (f * complex(math.SqrtPi, 0))
 }
