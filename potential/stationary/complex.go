@@ -15,16 +15,27 @@ import (
 // half plane: Re k > 0 where Re E lies above the lead's height, Im k > 0
 // where it lies below.
 func (s *Solver) Incoming(energy complex128) (in, slope complex128, log float64) {
+	k := wavenumber(energy-complex(s.near.Height, 0), s.near.Mass)
 	q := wavenumber(energy-complex(s.far.Height, 0), s.far.Mass)
-	r := ray{u: 1, w: complex(0, 1/s.far.Mass) * q, dw: 1i / q}
+	return s.incoming(energy, k, q)
+}
+
+// incoming is Incoming with the wave numbers of the near and the far lead
+// chosen by the caller.
+func (s *Solver) incoming(energy, k, q complex128) (in, slope complex128, log float64) {
+	r := s.leaving(q)
 	for i := range s.elements {
 		s.pass(&r, &s.elements[i], energy)
 	}
-	k := wavenumber(energy-complex(s.near.Height, 0), s.near.Mass)
 	m := complex(s.near.Mass, 0)
 	in = (r.u - 1i*m*r.w/k) / 2
 	slope = (r.du-1i*m*r.dw/k)/2 + 1i*m*m*r.w/(2*k*k*k)
 	return in, slope, r.log
+}
+
+// leaving is the outgoing wave of wave number q at the far face.
+func (s *Solver) leaving(q complex128) ray {
+	return ray{u: 1, w: complex(0, 1/s.far.Mass) * q, dw: 1i / q}
 }
 
 // wavenumber is sqrt(2 m e) on the sheet Incoming names.
