@@ -56,6 +56,7 @@ type inversion struct {
 	last        [2]complex128 // the last two samples
 	step, slope float64       // of the last stretch that was added
 	theta       float64
+	origin      float64
 }
 
 // add adds a stretch. It refuses one whose steps are too long for the energy,
@@ -69,7 +70,7 @@ func (s *inversion) add(part *Stretch, psi []complex128, first bool) bool {
 	weight := complex(slope, 0)
 	turn, factor := cmplx.Exp(complex(0, theta)), cmplx.Exp(complex(0, s.phase))
 	if !first {
-		s.shared(part, psi[0])
+		s.shared(part, psi[0], theta, slope)
 	}
 	for n, v := range psi {
 		w := v * factor
@@ -84,16 +85,30 @@ func (s *inversion) add(part *Stretch, psi []complex128, first bool) bool {
 	s.phase += float64(n) * theta
 	s.time += float64(n) * slope
 	s.last = [2]complex128{psi[max(0, n-1)], psi[n]}
-	s.step, s.slope, s.theta = part.Step, slope, theta
+	s.step, s.slope, s.theta, s.origin = part.Step, slope, theta, part.Origin
 	return true
 }
 
-// shared charges the sample that two stretches share: by the Euler-Maclaurin
-// sum formula (M. Abramowitz and I. A. Stegun, Handbook of Mathematical
-// Functions, 23.1.30) the two halves differ from an integral by
-// (dt^2 - dt'^2)/12 of the derivative there.
-func (s *inversion) shared(part *Stretch, psi complex128) {
-	s.charge(part.Step*part.Step/12*math.Abs(s.energy-part.Origin)*cmplx.Abs(psi), s.time)
+// shared mends the sample that two stretches share. A sum of psi_n exp(i n d)
+// that ends with half of a term exp(-i n theta) ends in (1/2i) cot(d/2) of it,
+// d the difference of the phases, where an integral has 1/(i d); the origin of
+// the new stretch, the mean energy of what is left, stands for all of it. What
+// is mended is charged.
+func (s *inversion) shared(part *Stretch, psi complex128, theta, slope float64) {
+	before, _ := s.pade.Phase((part.Origin - s.origin) * s.step)
+	ends := s.slope*cotangent((s.theta-before)/2) - slope*cotangent(theta/2)
+	mend := complex(0, ends/2) * psi * cmplx.Exp(complex(0, s.phase))
+	s.sum += mend
+	s.moment += mend * complex(s.time, 0)
+	s.charge(cmplx.Abs(mend)+part.Step*part.Step/12*math.Abs(s.energy-part.Origin)*cmplx.Abs(psi), s.time)
+}
+
+// cotangent is cot x - 1/x for |x| < pi/2 and beyond.
+func cotangent(x float64) float64 {
+	if math.Abs(x) < 1e-3 {
+		return -x / 3
+	}
+	return 1/math.Tan(x) - 1/x
 }
 
 func (s *inversion) charge(open, time float64) {

@@ -16,6 +16,7 @@ type Result struct {
 	Units      Units     `json:"units"`
 	Tolerance  float64   `json:"tolerance"`
 	Quantities []Measure `json:"quantities"`
+	Shift      *Shifts   `json:"shift"`
 	Ledger     *Ledger   `json:"ledger"`
 	Budget     *Budget   `json:"budget"`
 	Planes     *PlanesAt `json:"planes"`
@@ -97,6 +98,7 @@ func (t *Trial) Result(status propagate.Status) *Result {
 		r.Numerics = &numerics
 	}
 	r.Quantities = t.measures(limits)
+	r.Shift = t.shiftsOnBoth(limits, status)
 	r.Notes = t.notes()
 	r.Verdict = t.verdict(r, status)
 	return r
