@@ -128,7 +128,7 @@ func (r *Run) inspect() {
 // finish makes the tail of the look just taken.
 func (r *Run) finish() {
 	if r.splitter != nil {
-		r.tail = r.splitter.tail(r.Ledger().Time)
+		r.tail = r.splitter.tail(r.Ledger().Time, r.Step)
 	}
 }
 

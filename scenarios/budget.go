@@ -33,7 +33,7 @@ func (t *Trial) terms() terms {
 	return terms{
 		space: t.Plan.grids.space.times(2), edges: t.Plan.grids.edges,
 		time: t.timeTerm(), packet: t.Plan.start0,
-		tail:    t.tail(t.Run.Ledger(), t.Run.Remaining, t.Run.Lifetime).plus(t.astray()),
+		tail:    t.tail(t.Run.Ledger(), t.Run.Remaining, t.Run.Lifetime).plus(t.astray()).plus(t.poleTail()),
 		average: t.averageTerm(), rounding: t.roundingTerm(),
 	}
 }
@@ -123,7 +123,7 @@ func (t *Trial) tail(l *propagate.Ledger, remaining, lifetime float64) errorSet 
 	lifetime = math.Min(lifetime, l.Time)
 	m := t.means()
 	leaving := math.Max(0, remaining-2*t.stray())
-	moving := math.Max(leaving, l.FlowPeak*lifetime)
+	moving := math.Max(leaving, t.Run.Flow*lifetime) + t.Run.Cross
 	late := moving * math.Abs(l.Time+lifetime-math.Min(m.timeTransmitted, m.timeReflected))
 	inLayers := 0.0
 	for _, p := range l.InLayer {

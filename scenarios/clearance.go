@@ -23,7 +23,7 @@ func (p *planner) startError(g geometry) errorSet {
 	front.transmitted, front.reflected, front.lost = most, most, most
 	back := p.cutError(g, g.behind-g.start)
 	beyond := func(d float64) float64 { return math.Erfc(d/p.scenario.Packet.Length/math.Sqrt2) / 2 }
-	total := front.plus(back).plus(p.mismatch(g))
+	total := front.plus(back).plus(p.mismatch(g)).plus(p.caught(g))
 	return total.plus(p.misplaced(g, wrongWay(p.scenario.Packet)+beyond(g.start)+beyond(g.near-g.start)))
 }
 

@@ -57,6 +57,9 @@ func (l *Live) Moment(w Window) *Moment {
 	m.Steps = l.Trial.Run.Ledger().Steps
 	m.Reached = l.Latest()
 	m.Ledger = l.between.ledger()
+	if l.Ended() { // with the tail, if there is one
+		m.Ledger = l.Trial.ledger()
+	}
 	psi := l.between.Run.Psi()
 	m.Centre = l.sampler.Centre(psi) * l.Trial.Scenario.Scale.Length
 	l.columns(m, psi)

@@ -147,7 +147,7 @@ func (m *measurer) dwell() {
 	var packet *float64
 	budget := 0.0
 	if m.limits != nil {
-		d := m.Run.Ledger().TotalDwell()
+		d := m.Run.Booked().TotalDwell()
 		packet, budget = &d, m.limits.dwell
 	}
 	a := m.Averages.Dwell

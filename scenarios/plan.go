@@ -23,7 +23,10 @@ type Plan struct {
 	MostSteps int     // step limit of the run
 	Mesh      *propagate.Mesh
 
-	k0, length float64 // of the packet
+	States []*propagate.Eigenstate // by which the run is finished, if any
+
+	k0, length float64           // of the packet
+	handled    []stationary.Pole // the averages' resonances of the States
 
 	samples  []sample // merged: for what costs a solve each
 	all      []sample
@@ -90,6 +93,7 @@ func newPlan(s *Scenario, a *stationary.Averages, beyond stationary.Mean, forced
 		return nil, err
 	}
 	p.start0 = p.start0.plus(p.misplaced(p.geometry, p.sampling))
+	p.poles()
 	if err := p.time(); err != nil {
 		return nil, err
 	}
@@ -127,7 +131,7 @@ func (p *planner) grid() error {
 		if err != nil {
 			return err
 		}
-		grids := compareGrid(mesh, p.geometry, p.samples)
+		grids := compareGrid(mesh, p.geometry, p.samples, p.peaks(mesh))
 		sampling := p.packet().SamplingError(mesh)
 		worst := math.Max(p.weight(grids.space), p.weight(p.misplaced(p.geometry, sampling)))
 		if worst < best {

@@ -2,14 +2,16 @@ package scenarios
 
 import (
 	"math"
+	"slices"
 
+	"fluxtoll/potential/stationary"
 	"fluxtoll/propagate"
 )
 
 // time chooses the member of the time-stepping family and the step, and
 // estimates how long the run will be.
 func (p *planner) time() error {
-	p.Expected = p.expectedEnd()
+	p.Expected = p.expectedEnd(p.handled)
 	lowest, highest := 1, propagate.MaxPade
 	switch {
 	case p.forced.Pade > 0:
@@ -93,13 +95,14 @@ func timeError(samples []sample, pade propagate.Pade, dt, origin float64) float6
 }
 
 // expectedEnd estimates when no more than the tail's share will be left: the
-// slowest samples that carry that much, or the longest-lived resonance.
-func (p *planner) expectedEnd() float64 {
+// slowest samples that carry that much, or the longest-lived resonance. What
+// the taken resonances hold is not waited for.
+func (p *planner) expectedEnd(taken []stationary.Pole) float64 {
 	fraction := shareTail * p.scenario.Tolerance
 	end, held := 0.0, 0.0
 	for _, s := range p.samples {
 		held += s.weight
-		if held < fraction || s.SpeedIn == 0 {
+		if held < fraction || s.SpeedIn == 0 || s.waits(taken) {
 			continue
 		}
 		pass := 2 * clearance(fraction) * p.scenario.Packet.Length / s.SpeedIn
@@ -110,6 +113,9 @@ func (p *planner) expectedEnd() float64 {
 		}
 	}
 	for _, r := range p.averages.Resonances {
+		if slices.Contains(taken, r) {
+			continue
+		}
 		if held := p.heldBy(r.Energy, r.Width); held > fraction {
 			end = math.Max(end, p.start+math.Log(held/fraction)/r.Width)
 		}

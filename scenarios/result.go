@@ -18,6 +18,7 @@ type Result struct {
 	Quantities []Measure `json:"quantities"`
 	Shift      *Shifts   `json:"shift"`
 	Ledger     *Ledger   `json:"ledger"`
+	Tail       *Tail     `json:"tail,omitempty"`
 	Budget     *Budget   `json:"budget"`
 	Planes     *PlanesAt `json:"planes"`
 	Numerics   *Numerics `json:"numerics"`
@@ -96,6 +97,7 @@ func (t *Trial) Result(status propagate.Status) *Result {
 		r.Planes = &PlanesAt{p.at(p.near) * s.Length, p.farAt() * s.Length, p.at(p.start) * s.Length}
 		numerics := t.numerics()
 		r.Numerics = &numerics
+		r.Tail = t.tailReport()
 	}
 	r.Quantities = t.measures(limits)
 	r.Shift = t.shiftsOnBoth(limits, status)
@@ -131,11 +133,11 @@ func (t *Trial) verdict(r *Result, status propagate.Status) Verdict {
 // ledger reads the packet road's ledger, near and far instead of left and
 // right.
 func (t *Trial) ledger() Ledger {
-	l := t.Run.Ledger()
+	l := t.Run.Booked()
 	near, far := t.passages()
 	out := Ledger{
 		Reflected: near.Probability, Transmitted: far.Probability,
-		Lost: l.TotalLost(), Trapped: t.Run.Inside(),
+		Lost: l.TotalLost(), Trapped: t.Run.Trapped(),
 	}
 	out.Closure = 1 - (out.Reflected + out.Transmitted + out.Lost + out.Trapped)
 	return out
@@ -143,7 +145,7 @@ func (t *Trial) ledger() Ledger {
 
 // passages are what has passed the near and the far plane.
 func (t *Trial) passages() (near, far propagate.Passage) {
-	l := t.Run.Ledger()
+	l := t.Run.Booked()
 	if t.Plan.side == FromRight {
 		return l.Right, l.Left
 	}

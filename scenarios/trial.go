@@ -86,7 +86,10 @@ func (t *Trial) ending() propagate.Ending {
 			return tail.of(t.Scenario, t.Averages, t.means()) <= shareTail
 		},
 	}
-	if t.forced.TimeStep == 0 {
+	if t.forced.StopTime == 0 {
+		e.States = t.Plan.States
+	}
+	if t.forced.TimeStep == 0 && len(e.States) == 0 {
 		e.Slow = t.mayLengthen
 	}
 	if t.forced.StopTime > 0 {

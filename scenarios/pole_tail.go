@@ -1,0 +1,163 @@
+package scenarios
+
+import (
+	"math"
+	"math/cmplx"
+
+	"fluxtoll/potential/stationary"
+	"fluxtoll/propagate"
+)
+
+// A run is finished by poles where waiting for the resonances would make it
+// longer by more than worthPoles; then all resonances are taken of which, at
+// the end of the prompt part, more than exp(-stillThere) is left.
+const (
+	worthPoles = 1.3
+	stillThere = 25
+	mostPoles  = 200
+)
+
+// poles decides whether the run is to be finished by poles, and finds the
+// states of the mesh's own operator, starting from those of the averages. A
+// resonance whose state is not found is waited for.
+func (p *planner) poles() {
+	all := p.expectedEnd(nil)
+	slow := p.slow(p.expectedEnd(p.averages.Resonances))
+	if len(slow) == 0 || len(slow) > mostPoles || all < worthPoles*p.expectedEnd(slow) {
+		return
+	}
+	for _, r := range slow {
+		if u := p.state(p.Mesh, r); u != nil {
+			p.States = append(p.States, u)
+			p.handled = append(p.handled, r)
+		}
+	}
+}
+
+// slow lists the resonances that are still there at a time.
+func (p *planner) slow(end float64) []stationary.Pole {
+	var out []stationary.Pole
+	for _, r := range p.averages.Resonances {
+		if r.Width*end < stillThere {
+			out = append(out, r)
+		}
+	}
+	return out
+}
+
+// state is the mesh's own state for a resonance, nil where none is found that
+// is plainly the same: as near as the elements' accuracy allows, of a width
+// within a tenth, and not one that another resonance has led to.
+func (p *planner) state(mesh *propagate.Mesh, r stationary.Pole) *propagate.Eigenstate {
+	guess := complex(r.Energy, -r.Width/2)
+	u, err := mesh.Eigenstate(guess)
+	if err != nil {
+		return nil
+	}
+	reach := 0.1*r.Width + 1e-3*p.scenario.Tolerance*(p.High-p.Low) + 1e-12*math.Abs(r.Energy)
+	if !(cmplx.Abs(u.Energy-guess) < reach) || !(math.Abs(u.Width()-r.Width) < 0.1*r.Width+1e-12*math.Abs(r.Energy)) {
+		return nil
+	}
+	for _, v := range p.States {
+		if cmplx.Abs(u.Energy-v.Energy) < 1e-3*u.Width() {
+			return nil
+		}
+	}
+	return u
+}
+
+// waits reports whether an energy's own delay is that of a resonance whose
+// states are taken, which the run does not wait for. Each pole adds
+// (Width/2)/((E-Energy)^2 + Width^2/4) to the delay of t, and up to twice
+// that to the delay of r.
+func (s sample) waits(taken []stationary.Pole) bool {
+	share := 0.0
+	for _, r := range taken {
+		d := s.energy - r.Energy
+		share += r.Width / 2 / (d*d + r.Width*r.Width/4)
+	}
+	return 4*share > math.Max(math.Abs(s.GroupDelayReflected), math.Abs(s.GroupDelayTransmitted))
+}
+
+// poleTail charges what the states of a tail are not known to, and what they
+// and the rest have by interference: some of it may go to any part.
+func (t *Trial) poleTail() errorSet {
+	tail := t.Run.Tail()
+	if tail == nil {
+		return errorSet{}
+	}
+	near, far := tail.Error.FirstLeft, tail.Error.FirstRight
+	if t.Plan.side == FromRight {
+		near, far = far, near
+	}
+	m := t.means()
+	p := tail.Error.Probability
+	e := errorSet{transmitted: p, reflected: p, lost: p, dwell: tail.Error.Dwell}
+	if m.transmitted > leastPart {
+		e.arrivalTransmitted = far / m.transmitted
+	}
+	if m.reflected > leastPart {
+		e.arrivalReflected = near / m.reflected
+	}
+	return e
+}
+
+// Tail says how much of the packet road's numbers came from resonance states
+// after the last step, in display units.
+type Tail struct {
+	Poles       int     `json:"poles"`
+	Time        float64 `json:"time"` // of the last step
+	Reflected   float64 `json:"reflected"`
+	Transmitted float64 `json:"transmitted"`
+	Lost        float64 `json:"lost"`
+	Dwell       float64 `json:"dwell"`
+	// What the tail adds to the mean arrivals, absent where nothing arrives.
+	ArrivalReflected   *float64 `json:"arrival_reflected,omitempty"`
+	ArrivalTransmitted *float64 `json:"arrival_transmitted,omitempty"`
+	Error              float64  `json:"error"` // of its probabilities, and of what it adds to times as a part of them
+	States             []Level  `json:"states"`
+}
+
+// Level is a resonance state and what it held at the last step.
+type Level struct {
+	Energy      float64 `json:"energy"`
+	Width       float64 `json:"width"`
+	Lifetime    float64 `json:"lifetime"`
+	Probability float64 `json:"probability"`
+}
+
+// tailReport describes the tail; nil where there is none.
+func (t *Trial) tailReport() *Tail {
+	tail := t.Run.Tail()
+	if tail == nil {
+		return nil
+	}
+	unit := t.Scenario.Scale
+	near, far := tail.Left, tail.Right
+	stepped := t.Run.Ledger()
+	steppedNear, steppedFar := stepped.Left, stepped.Right
+	if t.Plan.side == FromRight {
+		near, far, steppedNear, steppedFar = far, near, steppedFar, steppedNear
+	}
+	probability, time := t.poleTail().relative(t.Averages, t.means())
+	out := &Tail{
+		Poles: len(tail.Held), Time: tail.Time * unit.Time,
+		Reflected: near.Probability, Transmitted: far.Probability, Lost: tail.TotalLost(),
+		Dwell: tail.TotalDwell() * unit.Time, Error: math.Max(probability, time),
+		ArrivalReflected:   added(steppedNear, near, unit.Time),
+		ArrivalTransmitted: added(steppedFar, far, unit.Time),
+	}
+	for _, h := range tail.Held {
+		width := h.State.Width()
+		out.States = append(out.States, Level{
+			Energy: real(h.State.Energy) * unit.Energy, Width: width * unit.Energy,
+			Lifetime: 1 / width * unit.Time, Probability: h.Probability,
+		})
+	}
+	return out
+}
+
+// added is by how much a tail moves a mean arrival.
+func added(stepped, tail propagate.Passage, unit float64) *float64 {
+	return scaled(stepped.Plus(tail).MeanTime()-stepped.MeanTime(), unit)
+}
