@@ -28,7 +28,7 @@ says whether they agree within an error that is computed.`,
 	root.SuggestionsMinimumDistance = 2
 	root.SetVersionTemplate("{{.Version}}\n")
 	root.SetFlagErrorFunc(func(cmd *cobra.Command, err error) error { return hinted(cmd, err.Error()) })
-	root.AddCommand(newRun(), newPulse(), newWatch(), newDemos(), newTrust(), newVerify())
+	root.AddCommand(newRun(), newCurve(), newResonances(), newPulse(), newWatch(), newDemos(), newTrust(), newVerify())
 	refuseUnknownHelp(root)
 	return root
 }
