@@ -12,6 +12,7 @@ type Record struct {
 	Steps     int       // recorded
 	Missed    int       // steps of the run beyond MostRecorded
 	start     [2]complex128
+	run       *Run
 }
 
 // Stretch is a part of a record in steps of one size.
@@ -46,7 +47,7 @@ func (r *Run) Record() *Record {
 	if r.Ledger().Steps != 0 {
 		panic("propagate: a record begins before the first step")
 	}
-	record := &Record{Pade: r.Pade, start: r.atPlanes()}
+	record := &Record{Pade: r.Pade, start: r.atPlanes(), run: r}
 	watch := r.ending.Watch
 	r.ending.Watch = func(l *Ledger) {
 		if watch != nil {

@@ -29,18 +29,20 @@ type Component struct {
 // undoes the time steps exactly: no error of the step is left, as long as no
 // two energies of the wave share a phase (dt times its band below 2 pi). Where
 // the step grows, both sides count half of the sample they share. After the
-// last sample the wave is continued as it fell at last; all of that is counted
-// in Open.
+// last sample the states of the run's tail go on, and what they do not make up
+// is continued as it fell at last; all of that is counted in Open.
 func (r *Record) At(energy float64, right bool) Component {
 	s := inversion{pade: r.Pade, energy: energy}
 	for i := range r.Stretches {
 		last := i == len(r.Stretches)-1
 		if !s.add(&r.Stretches[i], r.Stretches[i].trace(right).Psi, i == 0) {
-			s.rest(r.Stretches[i-1:])
+			s.rest(r.Stretches[i-1:], beside(s.last[:], nil))
 			break
 		}
 		if last {
-			s.rest(r.Stretches[i:])
+			states := r.tailAt(right)
+			s.states(states)
+			s.rest(r.Stretches[i:], beside(s.last[:], states))
 		}
 	}
 	return s.component()
@@ -119,12 +121,12 @@ func (s *inversion) charge(open, time float64) {
 // rest continues the wave after the last sample added as it fell at last, a
 // geometric series, of which half the first term is in the sum already. Where
 // the next stretch was refused its origin tells the energy of what is left.
-func (s *inversion) rest(parts []Stretch) {
-	v := s.last[1]
+func (s *inversion) rest(parts []Stretch, left lastTwo) {
+	v := left[1]
 	if v == 0 {
 		return
 	}
-	ratio := s.fall()
+	ratio := left.fall()
 	if len(parts) > 1 {
 		theta, _ := s.pade.Phase((parts[1].Origin - parts[0].Origin) * s.step)
 		ratio = cmplx.Exp(complex(0, -theta))
@@ -139,18 +141,6 @@ func (s *inversion) rest(parts []Stretch) {
 	s.sum += more
 	s.moment += more * complex(s.time, 0)
 	s.charge(cmplx.Abs(more), later)
-}
-
-// fall is the last ratio of two samples, at most 1 in modulus.
-func (s *inversion) fall() complex128 {
-	if s.last[0] == 0 {
-		return 0
-	}
-	q := s.last[1] / s.last[0]
-	if a := cmplx.Abs(q); a > 1 {
-		q /= complex(a, 0)
-	}
-	return q
 }
 
 // component is what the sums amount to.

@@ -17,6 +17,11 @@ type curveMaker struct {
 // and delay are given.
 const leastShot = 10
 
+// flown is by how much the error of a phase on the grid may exceed that of its
+// derivative at one energy times the kinetic energy: the derivative passes
+// through zero here and there.
+const flown = 4
+
 // curvesOf lists the curves.
 func (t *Trial) curvesOf() []curveMaker {
 	unit, scale := t.Scenario.Scale.TimeUnit, t.Scenario.Scale.Time
@@ -29,11 +34,11 @@ func (t *Trial) curvesOf() []curveMaker {
 			return square(s.r), s.exact.Reflection, squareError(s.r, s.slipR) + s.gridR, true
 		}},
 		{"phase_transmitted", "rad", 1, true, func(s shot) (float64, float64, float64, bool) {
-			return cmplx.Phase(s.t), cmplx.Phase(s.exact.T), phaseError(s.t, s.slipT, s.gridT, s.gridTT*s.kinetic),
+			return cmplx.Phase(s.t), cmplx.Phase(s.exact.T), phaseError(s.t, s.slipT, s.gridT, flown*s.gridTT*s.kinetic),
 				s.openFar && known(s.t, s.slipT)
 		}},
 		{"phase_reflected", "rad", 1, true, func(s shot) (float64, float64, float64, bool) {
-			return cmplx.Phase(s.r), cmplx.Phase(s.exact.R), phaseError(s.r, s.slipR, s.gridR, s.gridTR*s.kinetic),
+			return cmplx.Phase(s.r), cmplx.Phase(s.exact.R), phaseError(s.r, s.slipR, s.gridR, flown*s.gridTR*s.kinetic),
 				known(s.r, s.slipR)
 		}},
 		{"group_delay_transmitted", unit, scale, false, func(s shot) (float64, float64, float64, bool) {

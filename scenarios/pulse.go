@@ -78,7 +78,7 @@ type PulseSeries struct {
 type Trapped struct {
 	Probability float64       `json:"probability"`
 	Error       float64       `json:"error"`
-	Lifetime    *float64      `json:"lifetime"` // in which it fell by a factor e at last; null where it did not fall
+	Lifetime    *float64      `json:"lifetime"` // in which it fell by a factor e at last; null where it did not fall or is nothing but error
 	Resonances  []LifetimeFor `json:"resonances"`
 }
 
@@ -142,10 +142,10 @@ func (t *Trial) readPulses(out *PulseReport) {
 func (t *Trial) trapped() *Trapped {
 	unit := t.Scenario.Scale
 	out := &Trapped{
-		Probability: t.Run.Inside(), Error: t.roundingTerm().transmitted + t.stray(),
+		Probability: t.ledger().Trapped, Error: t.roundingTerm().transmitted + t.stray(),
 		Resonances: []LifetimeFor{},
 	}
-	if life := t.Run.Lifetime; !math.IsInf(life, 0) {
+	if life := t.Run.Lifetime; out.Probability > out.Error && !math.IsInf(life, 0) {
 		out.Lifetime = scaled(life, unit.Time)
 	}
 	near, _ := t.Scenario.leads()

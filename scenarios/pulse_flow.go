@@ -17,10 +17,11 @@ type outgoing struct {
 	lead    potential.Lead
 	stretch *propagate.Stretch
 	psi     []complex128 // transform, by frequency 2 pi j/len
+	smooth  []complex128 // the same of psi that goes on and fades instead of breaking off
 	origin  float64
 	pade    propagate.Pade
 	late    float64 // probability that passed in longer steps
-	flowed  float64 // probability that passed before, by the ledger's continuity
+	flowed  float64 // probability that passed before, or passes in a tail, by continuity
 }
 
 // out transforms the record at a plane.
@@ -45,10 +46,24 @@ func (t *Trial) out(far bool) outgoing {
 			}
 		}
 	}
+	if tail := t.Run.Tail(); tail != nil {
+		o.flowed += tail.TailMoments(right)[0]
+	}
 	padded := make([]complex128, powerOfTwo(2*len(trace.Psi)))
 	copy(padded, trace.Psi)
-	o.psi = fourier.NewCmplxFFT(len(padded)).Coefficients(nil, padded)
+	fft := fourier.NewCmplxFFT(len(padded))
+	o.psi = fft.Coefficients(nil, padded)
+	fade(padded[len(trace.Psi):], r.Continued(right, len(padded)-len(trace.Psi)))
+	o.smooth = fft.Coefficients(nil, padded)
 	return o
+}
+
+// fade writes a wave that fades: a series that broke off would ring.
+func fade(out, wave []complex128) {
+	for i, v := range wave {
+		c := math.Cos(math.Pi / 2 * float64(i+1) / float64(len(wave)+1))
+		out[i] = v * complex(c*c, 0)
+	}
 }
 
 func traceAt(s *propagate.Stretch, right bool) *propagate.Trace {
@@ -103,9 +118,42 @@ func (o *outgoing) energies(slow potential.Lead) energies {
 			slowness += p * slow.Mass / q
 		}
 	}
+	return newEnergies(sum, first, second, slowness, o.origin)
+}
+
+// energiesOf are the means over what passed; where states of a tail go on after
+// the last step, over the amplitudes at the energies that the averages are
+// taken at.
+func (t *Trial) energiesOf(o *outgoing, slow potential.Lead, far bool) energies {
+	if t.Run.Tail() == nil {
+		return o.energies(slow)
+	}
+	s := t.shooter()
+	right := far == (t.Plan.side == FromLeft)
+	var sum, first, second, slowness float64
+	for _, n := range t.Averages.Nodes {
+		e := n.Amplitudes.Energy
+		q := wave(o.lead, e)
+		if q == 0 {
+			continue
+		}
+		a := square(t.record.At(e, right).Amplitude / s.incoming(n.K))
+		p := n.Weight * a * q * s.near.Mass / (n.K * o.lead.Mass)
+		d := e - o.origin
+		sum += p
+		first += p * d
+		second += p * d * d
+		if v := wave(slow, e); v > 0 {
+			slowness += p * slow.Mass / v
+		}
+	}
+	return newEnergies(sum, first, second, slowness, o.origin)
+}
+
+func newEnergies(sum, first, second, slowness, origin float64) energies {
 	mean := ratio(first, sum)
 	return energies{
-		probability: sum, energy: o.origin + mean,
+		probability: sum, energy: origin + mean,
 		spread:   math.Sqrt(math.Max(0, ratio(second, sum)-mean*mean)),
 		slowness: ratio(slowness, sum),
 	}
@@ -136,7 +184,7 @@ func (o *outgoing) fine() series {
 		finer *= 2
 	}
 	psi, pull := make([]complex128, finer*n), make([]complex128, finer*n)
-	for j, c := range o.psi {
+	for j, c := range o.smooth {
 		e, _ := o.energy(j)
 		at := o.signed(j)
 		if at < 0 {

@@ -22,11 +22,11 @@ func (m *momentSum) add(t, q float64) {
 }
 
 // twice sums what each lists about its mean.
-func twice(each func(add func(t, q float64))) momentSum {
+func twice(each func(*momentSum)) momentSum {
 	var rough momentSum
-	each(rough.add)
+	each(&rough)
 	m := momentSum{mean: ratio(rough.first, rough.total)}
-	each(m.add)
+	each(&m)
 	return m
 }
 
@@ -41,17 +41,34 @@ func (m momentSum) moments(box float64) moments {
 	return out
 }
 
-// stepMoments are those of the flow in every step, by the ledger's continuity.
-func stepMoments(list []propagate.Stretch, right bool) moments {
+// addTail adds what a tail sends from a time on, by its moments from then.
+func (m *momentSum) addTail(time float64, q [4]float64) {
+	d := time - m.mean
+	m.total += q[0]
+	m.first += q[1] + d*q[0]
+	m.second += q[2] + d*(2*q[1]+d*q[0])
+	m.third += q[3] + d*(3*q[2]+d*(3*q[1]+d*q[0]))
+}
+
+// stepMoments are those of the flow in every step, by the ledger's continuity,
+// and of the tail, if any.
+func stepMoments(list []propagate.Stretch, right bool, tail *propagate.Tail) moments {
 	box, total := 0.0, 0.0
-	m := twice(func(add func(t, q float64)) {
+	m := twice(func(m *momentSum) {
 		for i := range list {
 			p := &list[i]
 			for n, flow := range traceAt(p, right).Flow {
-				add(p.Time+p.Step*(float64(n)+0.5), flow*p.Step)
+				m.add(p.Time+p.Step*(float64(n)+0.5), flow*p.Step)
 			}
 		}
+		if tail != nil {
+			m.addTail(tail.Time, tail.TailMoments(right))
+		}
 	})
+	if tail != nil {
+		q := tail.TailMoments(right)[0]
+		box, total = q*tail.Step*tail.Step/12, q
+	}
 	for i := range list {
 		p := &list[i]
 		for _, flow := range traceAt(p, right).Flow {
@@ -64,9 +81,9 @@ func stepMoments(list []propagate.Stretch, right bool) moments {
 
 // moments are those of the series, by the trapezoidal rule.
 func (s series) moments() moments {
-	m := twice(func(add func(t, q float64)) {
+	m := twice(func(m *momentSum) {
 		for i, flow := range s.flow {
-			add(s.at(i), flow*s.step)
+			m.add(s.at(i), flow*s.step)
 		}
 	})
 	return m.moments(0)

@@ -43,8 +43,8 @@ func (t *Trial) newPulseReader(far bool, budget errorSet) *pulseReader {
 func (r *pulseReader) pulse() Pulse {
 	right := r.far == (r.Plan.side == FromLeft)
 	r.outgoing = r.Trial.out(r.far)
-	r.steps = stepMoments(r.record.Stretches, right)
-	r.first = stepMoments(r.record.Stretches[:1], right)
+	r.steps = stepMoments(r.record.Stretches, right, r.Run.Tail())
+	r.first = stepMoments(r.record.Stretches[:1], right, nil)
 	r.series = r.outgoing.fine()
 	r.fine = r.series.moments()
 	r.times()
@@ -151,13 +151,29 @@ func (r *pulseReader) tailMoments() moments {
 	second := rest * (d*d + 2*d*lifetime + 2*lifetime*lifetime)
 	third := rest * (d*d*d + 3*d*d*lifetime + 6*d*lifetime*lifetime + 6*lifetime*lifetime*lifetime)
 	s := r.steps.deviation
+	if tail := r.Run.Tail(); tail != nil {
+		// An error of the tail's first moment is one of its lifetimes.
+		longest := 0.0
+		for _, h := range tail.Held {
+			if w := h.State.Width(); w > 0 && !h.Bound {
+				longest = math.Max(longest, 1/w)
+			}
+		}
+		e := r.poleTail()
+		moved := e.arrivalReflected
+		if r.far {
+			moved = e.arrivalTransmitted
+		}
+		second += moved * 2 * (math.Abs(d) + 2*longest)
+		third += moved * 3 * (d*d + 4*math.Abs(d)*longest + 6*longest*longest)
+	}
 	return moments{deviation: second / (2 * s), skewness: third/(s*s*s) + 1.5*math.Abs(r.steps.skewness)*second/(s*s)}
 }
 
 // spectrum adds the energies of what passed on both roads.
 func (r *pulseReader) spectrum() {
 	near, _ := r.Scenario.leads()
-	e := r.energies(near)
+	e := r.energiesOf(&r.outgoing, near, r.far)
 	mean, spread := r.averageEnergies()
 	missing := math.Abs(e.probability-r.flowed) + 2*math.Abs(r.outgoing.late) + math.Max(0, r.Run.Remaining) + r.slip
 	reach := math.Max(r.Plan.High-e.energy, e.energy-r.Plan.Low)
@@ -196,7 +212,7 @@ func (r *pulseReader) parts() (list []PulsePart, left int) {
 		if i == mostParts {
 			return list, len(split(r.series.flow)) - mostParts
 		}
-		s := r.series.shape(piece)
+		s := r.shapeOf(piece)
 		peak, height, slipPeak, slipHeight := r.peak(piece.peak)
 		// What may be wrong with the pulse may all be wrong with this part.
 		span := r.series.step * float64(piece.to-piece.from)
@@ -212,6 +228,20 @@ func (r *pulseReader) parts() (list []PulsePart, left int) {
 		})
 	}
 	return list, 0
+}
+
+// shapeOf is the shape of a part; the last one has the tail, if there is one.
+func (r *pulseReader) shapeOf(piece stretchOfPulse) shape {
+	s, tail := r.series.shape(piece), r.Run.Tail()
+	if tail == nil || piece.to < len(r.series.flow)-1 {
+		return s
+	}
+	m := momentSum{
+		total: s.probability, second: s.probability * s.deviation * s.deviation, mean: s.mean,
+	}
+	m.addTail(tail.Time, tail.TailMoments(r.far == (r.Plan.side == FromLeft)))
+	all := m.moments(0)
+	return shape{all.total, all.mean, all.deviation}
 }
 
 // mostShown bounds the points of a series that is written out; outside of what

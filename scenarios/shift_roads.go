@@ -73,20 +73,22 @@ func (t *Trial) measureShift(far bool, limits *errorSet, r *ShiftRoads) {
 	}
 	lead, _ := t.Scenario.leads()
 	o := t.out(far)
-	in := o.energies(lead)
+	in := t.energiesOf(&o, lead, far)
 	if !(in.probability > 0) || !(passed.Flux() > 0) {
 		return
 	}
 	late := passed.MeanTime()
 	parts := [3]float64{late - way*in.slowness, way * (in.slowness - free.Value), 0}
 	if far {
-		out := o.energies(o.lead)
+		out := t.energiesOf(&o, o.lead, far)
 		parts[2] = p.far*(out.slowness-in.slowness) - t.beyond.Value/t.Averages.Transmitted.Value
 		parts[0] = late - way*in.slowness - parts[2]
 	}
-	// What longer steps or nobody saw pass may have had any speed of the band.
-	unseen := math.Abs(in.probability-o.flowed) + math.Abs(o.late) + math.Max(0, t.Run.Remaining) + slip
-	bound := budget + way*unseen/in.probability*(in.slowness+free.Value) + way*free.Error
+	// What was not seen, or seen in longer steps only, may have had any speed
+	// that lets it pass by the end of the run.
+	unseen := math.Abs(in.probability-o.flowed)*way*(in.slowness+free.Value) +
+		(math.Abs(o.late)+math.Max(0, t.Run.Remaining)+slip)*math.Max(t.Run.Ledger().Time, late)
+	bound := budget + unseen/in.probability + way*free.Error
 	scale := t.Scenario.Scale.Time
 	for i, n := range []*ShiftNumber{&r.Structure, &r.Filter, &r.ExitLead} {
 		n.measure(parts[i]*scale, bound*scale)

@@ -24,6 +24,7 @@ func report(r *scenarios.Result) string {
 			b.WriteString(paragraph(p.label, p.text))
 		}
 	}
+	b.WriteString(shiftText(r.Shift, r.Units.Time))
 	for _, note := range r.Notes {
 		b.WriteString(paragraph("note", note))
 	}
