@@ -53,6 +53,8 @@ func (s *Scenario) band(b Band, height float64, name string) (from, to float64, 
 		return 0, 0, refuse("from", from, fmt.Sprintf("is not above the height of the %s, %s", name, lead), "an energy greater than "+lead+" is accepted")
 	case b.To != nil && !(to > height):
 		return 0, 0, refuse("to", to, fmt.Sprintf("is not above the height of the %s, %s", name, lead), "an energy greater than "+lead+" is accepted")
+	case b.To != nil && b.From == nil && !(to > from):
+		return 0, 0, refuse("to", to, "is not above the start of the packet's band, "+s.energyText(from), "give --from as well, or an energy greater than "+s.energyText(from))
 	case b.To != nil && !(to > from):
 		return 0, 0, refuse("to", to, "is not above the first energy, "+s.energyText(from), "an energy greater than "+s.energyText(from)+" is accepted")
 	case !(to > from):

@@ -53,14 +53,13 @@ type Bound struct {
 	Elements    *Element `json:"elements"`
 }
 
-// Element is the same state on the complex-scaled elements of the packet road:
-// Off is the larger of the differences of energy and of width, over the width
-// (over the energy above the bottom of the structure for a bound state).
+// Element is the same state on the complex-scaled elements of the packet road.
 type Element struct {
-	Energy float64 `json:"energy"`
-	Width  float64 `json:"width"`
-	Off    float64 `json:"off"`
-	Agrees bool    `json:"agrees"`
+	Energy    float64 `json:"energy"`
+	Width     float64 `json:"width"`
+	EnergyOff float64 `json:"energy_off"` // the difference of the energies
+	WidthOff  float64 `json:"width_off"`  // the difference of the widths, over the width; 0 for a bound state
+	Agrees    bool    `json:"agrees"`
 }
 
 // Resonances finds the resonances in a band of energies above the lower lead,

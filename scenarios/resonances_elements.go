@@ -27,27 +27,29 @@ const (
 )
 
 // holdAgainstElements finds the states again as eigenstates of the
-// complex-scaled elements. States that are wide for their energy are left
-// out: rotated by EdgeAngle, the edges no longer absorb what grows outwards.
+// complex-scaled elements. Left out are states that are wide for their energy,
+// since the edges, rotated by EdgeAngle, no longer absorb what grows outwards;
+// and those that rounding in the elements mixes with a neighbour.
 func (s *Scenario) holdAgainstElements(ctx context.Context, v *stationary.Survey, out *Resonances) error {
 	c := s.checker(v)
 	if c == nil {
 		return nil
 	}
+	lead := math.Min(s.Structure.Entry.Height, s.Structure.Exit.Height)
+	const moderate = 0.2 // width over energy
 	for i, r := range v.Resonances {
 		if err := ctx.Err(); err != nil {
 			return err
 		}
-		if moderate := 0.2 * (r.Energy - math.Min(s.Structure.Entry.Height, s.Structure.Exit.Height)); r.Width > moderate {
-			continue
+		if r.Width <= moderate*(r.Energy-lead) {
+			out.Resonances[i].Elements = c.find(r, neighbour(v.Resonances, i))
 		}
-		out.Resonances[i].Elements = c.find(r, r.Width)
 	}
 	for i, b := range v.Bound {
 		if err := ctx.Err(); err != nil {
 			return err
 		}
-		out.Bound[i].Elements = c.find(b, math.Max(b.Width, b.Energy-c.low))
+		out.Bound[i].Elements = c.find(b, neighbour(v.Bound, i))
 	}
 	for _, r := range out.Resonances {
 		out.Agrees = out.Agrees && (r.Elements == nil || r.Elements.Agrees)
@@ -58,11 +60,23 @@ func (s *Scenario) holdAgainstElements(ctx context.Context, v *stationary.Survey
 	return nil
 }
 
+// neighbour is the distance of the nearest other state in energy.
+func neighbour(list []stationary.State, i int) float64 {
+	d := math.Inf(1)
+	if i > 0 {
+		d = list[i].Energy - list[i-1].Energy
+	}
+	if i+1 < len(list) {
+		d = math.Min(d, list[i+1].Energy-list[i].Energy)
+	}
+	return d
+}
+
 // checker is a mesh for all the states of a survey.
 type checker struct {
-	mesh        *propagate.Mesh
-	scale       Scale
-	low, extent float64 // bottom of the structure; size of the energies met
+	mesh   *propagate.Mesh
+	scale  Scale
+	extent float64 // size of the energies met
 }
 
 // checker makes the mesh, or nil where it would be too large or there is
@@ -92,7 +106,7 @@ func (s *Scenario) checker(v *stationary.Survey) *checker {
 	if err != nil {
 		panic("scenarios: " + err.Error())
 	}
-	return &checker{mesh: propagate.NewMesh(layout), scale: s.Scale, low: low, extent: extent}
+	return &checker{mesh: propagate.NewMesh(layout), scale: s.Scale, extent: extent}
 }
 
 // heights are bounds of the height, leads included.
@@ -123,19 +137,30 @@ func checkGap(lead potential.Lead, w stationary.Window) float64 {
 }
 
 // find starts Newton's method beside the state that the stationary road knows;
-// nil where it leads to none. off is measured in units of size.
-func (c *checker) find(r stationary.State, size float64) *Element {
+// gap is the distance to the next. It returns nil where that leads to none.
+func (c *checker) find(r stationary.State, gap float64) *Element {
+	rounding := checkRounding * c.extent
+	mixed := rounding / gap
+	if mixed > 1e-3 {
+		return nil
+	}
 	u, err := c.mesh.Eigenstate(complex(r.Energy+r.Width/100, -r.Width/2))
 	if err != nil {
 		return nil
 	}
 	width := u.Width()
 	energyOff, widthOff := math.Abs(real(u.Energy)-r.Energy), math.Abs(width-r.Width)
-	rounding := checkRounding * c.extent
-	return &Element{
+	e := &Element{
 		Energy: real(u.Energy) * c.scale.Energy, Width: width * c.scale.Energy,
-		Off: math.Max(energyOff, widthOff) / size,
-		Agrees: energyOff <= checkAllowed*size+rounding+r.EnergyError &&
-			widthOff <= checkAllowed*size+r.WidthError,
+		EnergyOff: energyOff * c.scale.Energy,
 	}
+	// A bound state flows out by what rounding leaves, in units of its energy.
+	allowed := (checkAllowed + mixed) * r.Width
+	if r.Width > 0 {
+		e.WidthOff = widthOff / r.Width
+	} else {
+		allowed = rounding
+	}
+	e.Agrees = energyOff <= checkAllowed*r.Width+rounding+r.EnergyError && widthOff <= allowed+r.WidthError
+	return e
 }

@@ -45,7 +45,6 @@ hold unless --layers asks for it; --csv and --json hold it for up to 100 layers.
 	cmd.Flags().BoolVar(&o.layers, "layers", false, "the dwell time in each layer too, or not (--layers=false)")
 	cmd.Flags().BoolVar(&o.asCSV, "csv", false, "print comma-separated values")
 	cmd.Flags().BoolVar(&o.asJSON, "json", false, "print one JSON document")
-	cmd.MarkFlagsMutuallyExclusive("csv", "json")
 	return cmd
 }
 
@@ -58,6 +57,9 @@ type curveOptions struct {
 }
 
 func (o *curveOptions) run(cmd *cobra.Command, name string) error {
+	if o.asCSV && o.asJSON {
+		return hinted(cmd, "--csv and --json exclude each other")
+	}
 	scenario, band, err := o.band.open(cmd, name)
 	if err != nil {
 		return err

@@ -144,12 +144,12 @@ func sharesText(shares scenarios.Series) string {
 	})
 	var parts []string
 	for _, i := range order[:min(most, len(order))] {
-		if shares[i] >= least || len(parts) == 0 {
+		if shares[i] >= least {
 			parts = append(parts, fmt.Sprintf("[%d] %.2f", i, shares[i]))
 		}
 	}
 	if len(parts) == 0 {
-		return "none"
+		return "spread out"
 	}
 	return strings.Join(parts, " ")
 }
@@ -180,25 +180,26 @@ func boundText(r *scenarios.Resonances) string {
 
 // elementsText says how far the elements of the packet road are off.
 func elementsText(r *scenarios.Resonances) string {
-	asked, worst := 0, 0.0
+	var list []*scenarios.Element
 	for _, x := range r.Resonances {
-		if x.Elements != nil {
-			asked, worst = asked+1, math.Max(worst, x.Elements.Off)
-		}
+		list = append(list, x.Elements)
 	}
-	bound := 0
 	for _, x := range r.Bound {
-		if x.Elements != nil {
-			bound++
+		list = append(list, x.Elements)
+	}
+	asked, energy, width := 0, 0.0, 0.0
+	for _, e := range list {
+		if e != nil {
+			asked, energy, width = asked+1, math.Max(energy, e.EnergyOff), math.Max(width, e.WidthOff)
 		}
 	}
-	if asked+bound == 0 {
+	if asked == 0 {
 		return "no state was held against the complex-scaled elements"
 	}
-	verdict := "they agree"
+	verdict := "the roads agree"
 	if !r.Agrees {
-		verdict = "they DISAGREE"
+		verdict = "the roads DISAGREE"
 	}
-	return fmt.Sprintf("%d of %d resonances and %d of %d bound states found again on the complex-scaled elements of the packet road, the resonances to %s of their width: %s",
-		asked, len(r.Resonances), bound, len(r.Bound), brief(worst), verdict)
+	return fmt.Sprintf("%d of %d states found again on the complex-scaled elements of the packet road, widths to %s of themselves, energies to %s: %s",
+		asked, len(list), brief(width), withUnit(energy, r.Units.Energy), verdict)
 }
