@@ -44,16 +44,16 @@ type Deviation struct {
 // shot is scattering at one energy, out of the record, with errors. t and r
 // are as in stationary.Amplitudes.
 type shot struct {
-	energy, weight   float64
-	t, r             complex128
-	delayT, delayR   float64
-	slipT, slipR     float64 // errors of the amplitudes, absolute
-	shiftT, shiftR   float64 // errors of the delays, from those
-	exact            stationary.Amplitudes
-	gridT, gridR     float64 // of the probabilities, by the elements and the edges
-	gridTT, gridTR   float64 // of the times, likewise
-	kinetic          float64
-	openFar, hasBack bool
+	energy, weight float64
+	t, r           complex128
+	delayT, delayR float64
+	slipT, slipR   float64 // errors of the amplitudes, absolute
+	shiftT, shiftR float64 // errors of the delays, from those
+	exact          stationary.Amplitudes
+	gridT, gridR   float64 // of the probabilities, by the elements and the edges
+	gridTT, gridTR float64 // of the times, likewise
+	kinetic        float64
+	openFar        bool
 }
 
 // shooter takes energies out of the record of a trial.

@@ -98,13 +98,13 @@ func (o *outgoing) energy(j int) (e, slope float64) {
 	return o.origin + y/o.stretch.Step, s * o.stretch.Step
 }
 
-// energies are means over what passed the plane: probability, energy and
+// energyMeans are means over what passed the plane: probability, energy and
 // square of its distance from a reference, and 1/v in a lead.
-type energies struct{ probability, energy, spread, slowness float64 }
+type energyMeans struct{ probability, energy, spread, slowness float64 }
 
 // energies sums v theta' |psi|^2/len over the frequencies: by Parseval's
 // theorem 2 pi times the integral of v |a(E)|^2 over E.
-func (o *outgoing) energies(slow potential.Lead) energies {
+func (o *outgoing) energies(slow potential.Lead) energyMeans {
 	var sum, first, second, slowness float64
 	for j, c := range o.psi {
 		e, slope := o.energy(j)
@@ -124,7 +124,7 @@ func (o *outgoing) energies(slow potential.Lead) energies {
 // energiesOf are the means over what passed; where states of a tail go on after
 // the last step, over the amplitudes at the energies that the averages are
 // taken at.
-func (t *Trial) energiesOf(o *outgoing, slow potential.Lead, far bool) energies {
+func (t *Trial) energiesOf(o *outgoing, slow potential.Lead, far bool) energyMeans {
 	if t.Run.Tail() == nil {
 		return o.energies(slow)
 	}
@@ -150,9 +150,9 @@ func (t *Trial) energiesOf(o *outgoing, slow potential.Lead, far bool) energies 
 	return newEnergies(sum, first, second, slowness, o.origin)
 }
 
-func newEnergies(sum, first, second, slowness, origin float64) energies {
+func newEnergies(sum, first, second, slowness, origin float64) energyMeans {
 	mean := ratio(first, sum)
-	return energies{
+	return energyMeans{
 		probability: sum, energy: origin + mean,
 		spread:   math.Sqrt(math.Max(0, ratio(second, sum)-mean*mean)),
 		slowness: ratio(slowness, sum),
