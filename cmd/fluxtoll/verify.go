@@ -97,17 +97,22 @@ func caseText(list []published.Outcome) string {
 	if list[0].FromMemory {
 		source += " (from memory)"
 	}
-	t := table{{timesHeading(list), "", "expected", "found", "error", "allowed", ""}}
+	t := table{{unitHeading(list), "", "expected", "found", "error", "allowed", ""}}
 	for _, o := range list {
 		t = append(t, outcomeRow(o))
 	}
 	return list[0].Case + "\n" + paragraph("source", source) + t.String() + "\n"
 }
 
-// timesHeading names the unit of the times among the outcomes, if there is one.
-func timesHeading(list []published.Outcome) string {
+// unitHeading names the unit of the times or energies among the outcomes, if
+// there is one; no case has both.
+func unitHeading(list []published.Outcome) string {
 	for _, o := range list {
-		if o.Unit != "" {
+		switch {
+		case o.Unit == "":
+		case o.Road == published.States || o.Road == published.Elements:
+			return "energies in " + o.Unit
+		default:
 			return timesIn(o.Unit)
 		}
 	}

@@ -127,9 +127,9 @@ func TestPolesOfWell(t *testing.T) {
 }
 
 // TestDoubleDelta: with r = -i c/(k + i c) at each of two deltas of strength c
-// a distance d apart, poles lie where r exp(ikd) = +-1; two attractive ones
-// bind where kappa = |c| (1 +- exp(-kappa d)) (S. Fluegge, Practical Quantum
-// Mechanics, problem 20; from memory).
+// a distance d apart (D. J. Griffiths, Introduction to Quantum Mechanics, sec.
+// 2.5), poles lie where r exp(ikd) = +-1; two attractive ones bind where
+// kappa = |c| (1 +- exp(-kappa d)) (ibid., 2nd ed., problem 2.27; from memory).
 func TestDoubleDelta(t *testing.T) {
 	pair := func(c, d float64) *potential.Structure {
 		delta := potential.Layer{Shape: potential.Point{Strength: c}, Mass: 1}

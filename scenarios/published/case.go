@@ -19,11 +19,15 @@ type Case struct {
 // Road is the column of a result.
 type Road string
 
-// The roads. PlaneWave is the stationary road at one energy.
+// The roads. PlaneWave is the stationary road at one energy. Resonances and
+// bound states are found on the stationary road and again on the elements of
+// the packet road.
 const (
 	PlaneWave Road = "plane wave"
 	Average   Road = "average"
 	Packet    Road = "packet"
+	States    Road = "stationary"
+	Elements  Road = "elements"
 )
 
 // Check is one number that a case expects on some roads. Quantity is one of a
@@ -43,7 +47,7 @@ const (
 
 // Cases lists all cases.
 func Cases() []Case {
-	return slices.Concat(steps(), barriers(), points(), smooth(), ramps(), stacks(), packets())
+	return slices.Concat(steps(), barriers(), points(), smooth(), ramps(), stacks(), packets(), states())
 }
 
 // isProbability tells probabilities from times.
@@ -63,6 +67,9 @@ func (c Check) allowed(road Road, m *scenarios.Measure) float64 {
 		return 0
 	case c.isProbability():
 		return 1e-10
+	case c.isOfState():
+		// Rounding of the heights, and of the constants behind the units.
+		return 1e-10 * math.Abs(c.Expected)
 	}
 	return 1e-8 * math.Max(1, math.Abs(c.Expected))
 }

@@ -24,7 +24,7 @@ func TestCases(t *testing.T) {
 			}
 		})
 	}
-	for _, road := range []Road{PlaneWave, Average, Packet} {
+	for _, road := range []Road{PlaneWave, Average, Packet, States, Elements} {
 		if seen[road] < 10 {
 			t.Errorf("%d numbers checked on the road %q, want at least 10", seen[road], road)
 		}

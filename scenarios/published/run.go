@@ -48,7 +48,10 @@ func (c Case) compare(check Check, road Road, a *answers) Outcome {
 		Case: c.Name, Source: c.Source, FromMemory: c.FromMemory, Quantity: check.Quantity, Road: road,
 		Expected: check.Expected, Allowed: check.allowed(road, a.measure(check.Quantity)),
 	}
-	if !check.isProbability() {
+	switch {
+	case check.isOfState():
+		o.Unit = a.scenario.Scale.EnergyUnit
+	case !check.isProbability():
 		o.Unit = a.scenario.Scale.TimeUnit
 	}
 	found, ok := a.value(check.Quantity, road)
@@ -64,8 +67,9 @@ func (c Case) compare(check Check, road Road, a *answers) Outcome {
 type answers struct {
 	scenario *scenarios.Scenario
 	plane    stationary.Amplitudes
-	trial    *scenarios.Trial  // nil where only the plane wave is asked for
-	result   *scenarios.Result // likewise
+	trial    *scenarios.Trial      // nil where only the plane wave is asked for
+	result   *scenarios.Result     // likewise
+	states   *scenarios.Resonances // nil unless asked for
 }
 
 // answers takes the roads that the checks ask for.
@@ -79,6 +83,11 @@ func (c Case) answers(ctx context.Context) (*answers, error) {
 		return nil, err
 	}
 	s := a.scenario
+	if c.asks(States, Elements) {
+		if a.states, err = s.Resonances(ctx, scenarios.Band{}); err != nil {
+			return nil, err
+		}
+	}
 	solver := stationary.New(s.Structure, s.Packet.Side == scenarios.FromRight)
 	if err := solver.At(s.Packet.Energy, &a.plane); err != nil || !c.asks(Average, Packet) {
 		return a, err

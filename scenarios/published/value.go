@@ -29,6 +29,8 @@ func (a *answers) value(quantity string, road Road) (float64, bool) {
 		return a.planeWave(quantity)
 	case Average:
 		return a.average(quantity)
+	case States, Elements:
+		return a.state(quantity, road)
 	}
 	m := a.measure(quantity)
 	if m == nil || m.Packet == nil {
