@@ -58,9 +58,11 @@ func newTrustSearch(ctx context.Context, s *Scenario, within float64, progress f
 }
 
 // clearOfZero is the length from which on the spectrum keeps so clear of
-// k = 0 that the packet road's budget allows for it, see wrongWay.
+// k = 0 that the packet road's budget allows for it, see wrongWay; with a
+// margin, since what is next to k = 0 takes very long.
 func clearOfZero(s *Scenario) float64 {
-	return math.Sqrt(math.Log(2/(sharePacket*s.Tolerance))/2) / s.Packet.K0
+	const margin = 1e-4
+	return math.Sqrt(math.Log(2/(margin*sharePacket*s.Tolerance))/2) / s.Packet.K0
 }
 
 // average averages over the spectrum of a packet of some length.

@@ -83,8 +83,8 @@ func reachText(t *scenarios.Trust, q scenarios.Trusted) string {
 		return fmt.Sprintf("it is within %s at every length searched, from %s on",
 			within, numberWithUnit(t.Searched.From, u.Length))
 	case scenarios.ReachedNowhere:
-		return fmt.Sprintf("it is not within %s at any length up to %s, 1000 times the length given",
-			within, numberWithUnit(t.Searched.To, u.Length))
+		return fmt.Sprintf("it is not within %s at any length up to %s, %s times the length given",
+			within, numberWithUnit(t.Searched.To, u.Length), short(t.Searched.To/t.Length))
 	}
 	return "from which length on it holds was not found before the interruption"
 }
