@@ -29,26 +29,41 @@ func (s *Scenario) Roomy() *Scenario {
 	return &c
 }
 
-// evenWork is how many node solves a pulse may take in steps of one size
-// before they may grow: a few seconds.
+// evenWork is how many node solves a pulse may take in steps of one size, and
+// before it is left to the states of a tail: a few seconds.
 const evenWork = 2e8
 
+// leftToTail is the part of the tolerance that may be left when a pulse is
+// finished by a tail, in which it has no series.
+const leftToTail = 0.1
+
 // PreparePulse is Prepare for a run whose pulses and energies are looked at:
-// roomy, and in steps of one size for as long as that takes no more than
-// seconds, since energies are read off less well across a change of step.
+// roomy, and for as long as that takes no more than seconds in steps of one
+// size, since energies are read off less well across a change of step, and
+// until all but a little has passed.
 func PreparePulse(ctx context.Context, s *Scenario, forced Forced) (*Trial, error) {
 	t, err := Prepare(ctx, s.Roomy(), forced)
 	if err != nil || t.Run == nil {
 		return t, err
 	}
+	t.Run = propagate.NewRun(t.Run.Stepper, t.patient(t.ending()))
+	t.record = t.Run.Record()
+	return t, nil
+}
+
+// patient makes an ending wait for the pulse.
+func (t *Trial) patient(e propagate.Ending) propagate.Ending {
 	even := int(evenWork / float64(t.Plan.Mesh.Nodes()*t.Plan.Pade.Member))
-	e := t.ending()
 	if slow := e.Slow; slow != nil {
 		e.Slow = func(l *propagate.Ledger, remaining, lifetime float64) bool {
 			return l.Steps > even && slow(l, remaining, lifetime)
 		}
 	}
-	t.Run = propagate.NewRun(t.Run.Stepper, e)
-	t.record = t.Run.Record()
-	return t, nil
+	if settled := e.Settled; len(e.States) > 0 {
+		left := math.Max(leftToTail*t.Scenario.Tolerance, 2*t.stray())
+		e.Settled = func(l *propagate.Ledger, remaining, lifetime float64) bool {
+			return (l.Steps > even || l.Remaining() < left) && settled(l, remaining, lifetime)
+		}
+	}
+	return e
 }
