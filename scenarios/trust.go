@@ -97,7 +97,7 @@ func Trustworthy(ctx context.Context, s *Scenario, ask TrustRequest, progress fu
 	if err != nil && ctx.Err() == nil {
 		return nil, err
 	}
-	out.Notes = search.remarks(answers, out.Runs)
+	out.Notes = search.remarks()
 	out.Verdict = trustVerdict(err, pick(out.Quantities, of), out.Runs)
 	out.Seconds = time.Since(began).Seconds()
 	return out, nil

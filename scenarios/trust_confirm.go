@@ -4,6 +4,7 @@ import (
 	"cmp"
 	"context"
 	"errors"
+	"fmt"
 	"math"
 	"runtime"
 	"slices"
@@ -29,11 +30,11 @@ type TrustRun struct {
 	OffPacket    *float64 `json:"off_packet"`
 	OffBudget    *float64 `json:"off_budget"`
 	Expected     Standing `json:"expected"`
-	Found        Standing `json:"found"`     // by the packet, within the run's budget; empty where there is none
-	Tolerance    float64  `json:"tolerance"` // of the run
-	Verdict      Verdict  `json:"verdict"`   // of the run on this quantity; Disagrees where any of its quantities does
+	Found        Standing `json:"found"`             // by the packet, within the run's budget; empty where there is none
+	Tolerance    float64  `json:"tolerance"`         // of the run
+	Verdict      Verdict  `json:"verdict"`           // of the run on this quantity; Disagrees where any of its quantities does
+	Refused      string   `json:"refused,omitempty"` // why there is no packet
 	Seconds      float64  `json:"seconds"`
-	refused      *LimitError
 }
 
 // contradicts reports whether the packet found what was not expected, by more
@@ -256,9 +257,14 @@ func (t *trustSearch) row(v visit, o outcome) TrustRun {
 		Name: n.name, Unit: unit, At: v.at, Length: v.length * s.Scale.Length, Spread: s.spread(v.length),
 		Expected: v.expected, Tolerance: o.tolerance, Verdict: NotReached,
 	}
-	errors.As(o.err, &r.refused)
-	if errors.Is(o.err, context.Canceled) {
+	var limit *LimitError
+	switch {
+	case errors.As(o.err, &limit):
+		r.Refused = fmt.Sprintf("it would need about %.2g %s; the limit is %.2g", limit.Estimate, limit.What, limit.Limit)
+	case errors.Is(o.err, context.Canceled) || errors.Is(o.err, context.DeadlineExceeded):
 		r.Verdict = Incomplete
+	case o.err != nil:
+		r.Refused = o.err.Error()
 	}
 	if o.Result == nil {
 		return r

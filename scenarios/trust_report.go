@@ -1,7 +1,6 @@
 package scenarios
 
 import (
-	"fmt"
 	"math"
 
 	"fluxtoll/potential/stationary"
@@ -20,7 +19,8 @@ type Trusted struct {
 	PercentOf    PercentOf `json:"percent_of"`
 	Standing     Standing  `json:"standing"`
 	Reached      Reach     `json:"reached"`
-	Length       *float64  `json:"length"` // from which on it is within; nil unless Reached is ReachedFrom
+	OffLongest   *float64  `json:"off_longest"` // at the longest length searched; nil if Reached is ReachedUnknown
+	Length       *float64  `json:"length"`      // from which on it is within; nil unless Reached is ReachedFrom
 	LengthError  *float64  `json:"length_error"`
 	Spread       *float64  `json:"spread"` // the same as a spread
 	Times        *float64  `json:"times"`  // the same in lengths of the packet as given
@@ -70,12 +70,12 @@ func (t *trustSearch) report(answers []answer) *Trust {
 		Searched: Searched{math.Exp(t.lo) * scale.Length, math.Exp(t.hi) * scale.Length, len(t.known) + 1},
 	}
 	for i, n := range t.numbers {
-		out.Quantities = append(out.Quantities, t.trusted(n, answers[i]))
+		out.Quantities = append(out.Quantities, t.trusted(i, n, answers[i]))
 	}
 	return out
 }
 
-func (t *trustSearch) trusted(n planeWave, a answer) Trusted {
+func (t *trustSearch) trusted(i int, n planeWave, a answer) Trusted {
 	unit, scale := t.scaleOf(n)
 	average, off := n.average(t.given), n.off(t.given)
 	q := Trusted{
@@ -83,6 +83,9 @@ func (t *trustSearch) trusted(n planeWave, a answer) Trusted {
 		Average: average.Value * scale, AverageError: average.Error * scale,
 		Off: 100 * off.Value, OffError: 100 * off.Error, PercentOf: n.of,
 		Standing: t.standing(off), Reached: a.reach,
+	}
+	if a.reach != ReachedUnknown {
+		q.OffLongest = scaled(t.known[t.hi][i].Value, 100)
 	}
 	if a.reach == ReachedFrom {
 		length, s := math.Exp(a.x), t.scenario
@@ -93,7 +96,7 @@ func (t *trustSearch) trusted(n planeWave, a answer) Trusted {
 }
 
 // remarks are what a reader of the numbers needs besides.
-func (t *trustSearch) remarks(answers []answer, runs []TrustRun) []string {
+func (t *trustSearch) remarks() []string {
 	var out []string
 	s := t.scenario
 	if s.Packet.Start != nil || s.Planes != (Planes{}) {
@@ -101,18 +104,6 @@ func (t *trustSearch) remarks(answers []answer, runs []TrustRun) []string {
 	}
 	if t.unsure {
 		out = append(out, "some averages did not reach their accuracy; their errors are larger for it")
-	}
-	for i, n := range t.numbers {
-		if answers[i].reach == ReachedNowhere && n.of == OfPlaneWave {
-			out = append(out, fmt.Sprintf("%s: not within %s %% at the longest packet searched, where it is still off by %.3g %%",
-				n.name, shortest(100*t.within), 100*t.known[t.hi][i].Value))
-		}
-	}
-	for _, r := range runs {
-		if r.refused != nil {
-			out = append(out, fmt.Sprintf("the run at %.4g %s was refused: it would need about %.2g %s; the limit is %.2g",
-				r.Length, s.Scale.LengthUnit, r.refused.Estimate, r.refused.What, r.refused.Limit))
-		}
 	}
 	return out
 }

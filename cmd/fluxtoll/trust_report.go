@@ -27,6 +27,11 @@ func trustReport(t *scenarios.Trust) string {
 		}
 	}
 	b.WriteString("\n" + paragraph("searched", searchedText(t)))
+	for _, r := range t.Runs {
+		if r.Refused != "" {
+			b.WriteString(paragraph("note", fmt.Sprintf("the run at %s was refused: %s", numberWithUnit(r.Length, t.Units.Length), r.Refused)))
+		}
+	}
 	for _, note := range t.Notes {
 		b.WriteString(paragraph("note", note))
 	}
@@ -83,8 +88,8 @@ func reachText(t *scenarios.Trust, q scenarios.Trusted) string {
 		return fmt.Sprintf("it is within %s at every length searched, from %s on",
 			within, numberWithUnit(t.Searched.From, u.Length))
 	case scenarios.ReachedNowhere:
-		return fmt.Sprintf("it is not within %s at any length up to %s, %s times the length given",
-			within, numberWithUnit(t.Searched.To, u.Length), short(t.Searched.To/t.Length))
+		return fmt.Sprintf("it is not within %s at any length up to %s, %s times the length given, where it is still off by %s",
+			within, numberWithUnit(t.Searched.To, u.Length), short(t.Searched.To/t.Length), offOrNone(q.OffLongest))
 	}
 	return "from which length on it holds was not found before the interruption"
 }
@@ -111,7 +116,7 @@ func deviationTable(t *scenarios.Trust) table {
 	for _, q := range t.Quantities {
 		e := max(q.AverageError, 1e-6*max(q.Average, -q.Average))
 		rows = append(rows, []string{
-			q.Name, known(q.PlaneWave, e, 10), known(q.Average, e, 10), brief(q.AverageError),
+			q.Name, known(q.PlaneWave, 1e-6*max(q.PlaneWave, -q.PlaneWave), 10), known(q.Average, e, 10), brief(q.AverageError),
 			percentText(q.Off), standingText(q),
 		})
 	}
@@ -207,6 +212,8 @@ func offOrNone(v *float64) string {
 // not agreement.
 func foundText(r scenarios.TrustRun) string {
 	switch {
+	case r.Refused != "":
+		return "refused"
 	case r.Found == "":
 		return string(r.Verdict)
 	case r.Verdict == scenarios.Disagrees:
