@@ -141,7 +141,9 @@ func (t *trustSearch) asked(names []string) ([]int, error) {
 		if i < 0 {
 			return nil, &NoSuchNumber{name, all}
 		}
-		out = append(out, i)
+		if !slices.Contains(out, i) {
+			out = append(out, i)
+		}
 	}
 	return out, nil
 }
