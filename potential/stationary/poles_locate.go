@@ -144,7 +144,7 @@ func (l *locator) offer(z complex128, r rectangle) {
 		return
 	}
 	for _, known := range l.zeros {
-		if cmplx.Abs(polished-known.at) <= 0.1*l.blur(polished) {
+		if cmplx.Abs(polished-known.at) <= 0.1*l.blur(polished)+4*(off+known.error) {
 			return
 		}
 	}
