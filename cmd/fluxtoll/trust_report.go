@@ -23,7 +23,7 @@ func trustReport(t *scenarios.Trust) string {
 	b.WriteString("\n" + lengthTable(t).String())
 	for _, q := range asked {
 		if rows := trustRuns(t, q); len(rows) > 1 {
-			b.WriteString("\n" + rows.String())
+			b.WriteString("\n" + q.Name + "\n" + rows.String())
 		}
 	}
 	b.WriteString("\n" + paragraph("searched", searchedText(t)))
@@ -129,7 +129,7 @@ func standingText(q scenarios.Trusted) string {
 	if q.PercentOf == scenarios.OfPlaneWave {
 		return string(q.Standing)
 	}
-	return fmt.Sprintf("%s (of the %s)", q.Standing, q.PercentOf)
+	return fmt.Sprintf("%s, of %s", q.Standing, q.PercentOf)
 }
 
 // percentText writes a signed deviation.
@@ -187,7 +187,7 @@ func inUnit(what, unit string) string {
 
 // trustRuns shows the packet runs for a quantity.
 func trustRuns(t *scenarios.Trust, q scenarios.Trusted) table {
-	rows := table{{q.Name, inUnit("length", t.Units.Length), "average", "packet", "budget", "off by", "found"}}
+	rows := table{{"packet runs", inUnit("length", t.Units.Length), "average", "packet", "budget", "off by", "found"}}
 	for _, r := range t.Runs {
 		if r.Name != q.Name {
 			continue
