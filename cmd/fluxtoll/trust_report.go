@@ -114,9 +114,13 @@ func numberWithUnit(v float64, unit string) string {
 func deviationTable(t *scenarios.Trust) table {
 	rows := table{{timesIn(t.Units.Time), "plane wave", "average", "error", "off by", ""}}
 	for _, q := range t.Quantities {
-		e := max(q.AverageError, 1e-6*max(q.Average, -q.Average))
+		digits := 1e-6 // as many as that asks for are enough to compare
+		if q.PercentOf != scenarios.OfPlaneWave {
+			digits = 1e-4
+		}
 		rows = append(rows, []string{
-			q.Name, known(q.PlaneWave, 1e-6*max(q.PlaneWave, -q.PlaneWave), 10), known(q.Average, e, 10), brief(q.AverageError),
+			q.Name, cell(&q.PlaneWave, digits*magnitude(&q.PlaneWave), 10),
+			cell(&q.Average, max(q.AverageError, digits*magnitude(&q.Average)), 10), brief(q.AverageError),
 			percentText(q.Off), standingText(q),
 		})
 	}
@@ -129,7 +133,7 @@ func standingText(q scenarios.Trusted) string {
 	if q.PercentOf == scenarios.OfPlaneWave {
 		return string(q.Standing)
 	}
-	return fmt.Sprintf("%s, of %s", q.Standing, q.PercentOf)
+	return fmt.Sprintf("%s, %s", q.Standing, q.PercentOf)
 }
 
 // percentText writes a signed deviation.
