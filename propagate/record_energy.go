@@ -17,8 +17,20 @@ type Component struct {
 	Open, Late float64
 }
 
-// At takes one energy out of the wave at the left or the right plane. The wave
-// is
+// Reader takes energies out of the record of a run that has ended, at one
+// plane.
+type Reader struct {
+	record *Record
+	right  bool
+	states []held
+}
+
+// Reader returns the reader of the left or the right plane.
+func (r *Record) Reader(right bool) *Reader {
+	return &Reader{record: r, right: right, states: r.tailAt(right)}
+}
+
+// At takes one energy out of the wave at the plane. The wave is
 //
 //	psi_n = integral of a(E) exp(-i n theta(E)) dE,
 //
@@ -31,18 +43,17 @@ type Component struct {
 // the step grows, both sides count half of the sample they share. After the
 // last sample the states of the run's tail go on, and what they do not make up
 // is continued as it fell at last; all of that is counted in Open.
-func (r *Record) At(energy float64, right bool) Component {
-	s := inversion{pade: r.Pade, energy: energy}
-	for i := range r.Stretches {
-		last := i == len(r.Stretches)-1
-		if !s.add(&r.Stretches[i], r.Stretches[i].trace(right).Psi, i == 0) {
-			s.rest(r.Stretches[i-1:], beside(s.last[:], nil))
+func (r *Reader) At(energy float64) Component {
+	s := inversion{pade: r.record.Pade, energy: energy}
+	list := r.record.Stretches
+	for i := range list {
+		if !s.add(&list[i], list[i].trace(r.right).Psi, i == 0) {
+			s.rest(list[i-1:], beside(s.last[:], nil))
 			break
 		}
-		if last {
-			states := r.tailAt(right)
-			s.states(states)
-			s.rest(r.Stretches[i:], beside(s.last[:], states))
+		if i == len(list)-1 {
+			s.states(r.states)
+			s.rest(list[i:], beside(s.last[:], r.states))
 		}
 	}
 	return s.component()

@@ -39,8 +39,9 @@ func (t *Tail) addMoments(out *[4]float64, u, v Held, count float64, right bool)
 // held is a state of the tail as it is seen at a plane: psi after n more steps
 // is value ratio^n.
 type held struct {
-	value, ratio complex128
-	state        *Eigenstate
+	value, ratio  complex128
+	energy, width float64
+	doubt         float64 // error of the complex energy
 }
 
 // tailAt lists the states of the run's tail, if the record reaches up to it.
@@ -57,7 +58,11 @@ func (r *Record) tailAt(right bool) []held {
 	var out []held
 	for _, h := range tail.Held {
 		y := (h.State.Energy - complex(last.Origin, 0)) * complex(last.Step, 0)
-		out = append(out, held{h.Amplitude * h.State.face[face], r.Pade.Step(-1i * y), h.State})
+		u := h.State
+		out = append(out, held{
+			value: h.Amplitude * u.face[face], ratio: r.Pade.Step(-1i * y),
+			energy: real(u.Energy), width: u.Width(), doubt: u.WidthError + u.EnergyError,
+		})
 	}
 	return out
 }
@@ -112,13 +117,12 @@ func (l lastTwo) fall() complex128 {
 // difference of the energies, in which a width far below rounding survives.
 func (s *inversion) states(list []held) {
 	for _, h := range list {
-		off := complex(s.energy-real(h.state.Energy), h.state.Width()/2)
+		off := complex(s.energy-h.energy, h.width/2)
 		d := s.away(off, h)
 		more := complex(s.slope, 0) * h.value * cmplx.Exp(complex(0, s.phase))
 		s.sum += more * (1/d - 0.5)
 		s.moment += more * (complex(s.time, 0)*(1/d-0.5) + complex(s.slope, 0)*(1-d)/(d*d))
-		doubt := (h.state.WidthError + h.state.EnergyError) / cmplx.Abs(off)
-		s.charge(cmplx.Abs(more/d)*doubt, s.time+s.slope/cmplx.Abs(d))
+		s.charge(cmplx.Abs(more/d)*h.doubt/cmplx.Abs(off), s.time+s.slope/cmplx.Abs(d))
 	}
 }
 

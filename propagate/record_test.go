@@ -85,7 +85,7 @@ func TestComponentOfAStep(t *testing.T) {
 		for _, k := range []float64{1.75, 1.9, 2, 2.15, 2.25} {
 			e := k * k / 2
 			q := math.Sqrt(2 * (e - 1))
-			got := record.At(e, true)
+			got := record.Reader(true).At(e)
 			d := (k - s.packet.K0) * s.packet.Length
 			phi := math.Pow(2/math.Pi, 0.25) * math.Sqrt(s.packet.Length) * math.Exp(-d*d)
 			want := cmplx.Rect(phi*2/(k+q)/math.Sqrt(2*math.Pi), -k*s.packet.Centre+q*s.extent.PlaneRight)
@@ -120,7 +120,7 @@ func TestComponentAcrossStretches(t *testing.T) {
 	}
 	for _, e := range []float64{0.9, 1.1, 1.28, 1.5, 1.8} {
 		for _, right := range []bool{false, true} {
-			a, b := one.At(e, right), many.At(e, right)
+			a, b := one.Reader(right).At(e), many.Reader(right).At(e)
 			if off := cmplx.Abs(a.Amplitude - b.Amplitude); !(off <= a.Open+b.Open) || !(b.Open < 0.02) {
 				t.Errorf("energy %g, right %v: off by %.2g, open %.2g and %.2g", e, right, off, a.Open, b.Open)
 			}

@@ -59,17 +59,20 @@ type shot struct {
 // shooter takes energies out of the record of a trial.
 type shooter struct {
 	*Trial
-	near, far potential.Lead
-	solver    *stationary.Solver
-	mesh      *propagate.Scatterer
-	noise     float64 // of an amplitude, in units of the incoming peak
+	near, far     potential.Lead
+	back, through *propagate.Reader
+	solver        *stationary.Solver
+	mesh          *propagate.Scatterer
+	noise         float64 // of an amplitude, in units of the incoming peak
 }
 
 func (t *Trial) shooter() *shooter {
 	near, far := t.Scenario.leads()
 	solves := float64(t.Run.Ledger().Steps * t.Plan.Pade.Member)
+	right := t.Plan.side == FromLeft
 	return &shooter{
 		Trial: t, near: near, far: far,
+		back: t.record.Reader(!right), through: t.record.Reader(right),
 		solver: stationary.New(t.Scenario.Structure, t.Plan.side == FromRight),
 		mesh:   propagate.NewScatterer(t.Plan.Mesh),
 		noise:  8*0x1p-53*math.Sqrt(solves+16) + gridShare*math.Sqrt(t.Plan.sampling),
@@ -106,14 +109,14 @@ func (s *shooter) at(energy float64) (shot, error) {
 	if err := s.solver.At(energy, &out.exact); err != nil {
 		return out, err
 	}
-	right, in, p := s.Plan.side == FromLeft, s.incoming(k), s.Plan
+	in, p := s.incoming(k), s.Plan
 	slow := s.near.Mass / k
-	back, e := s.record.At(energy, !right), s.slips(k)
+	back, e := s.back.At(energy), s.slips(k)
 	out.r = back.Amplitude / in * cmplx.Rect(1, -k*p.near)
 	out.delayR = back.Time - (p.start+p.near)*slow
 	out.slipR, out.shiftR = e.reflected(back, cmplx.Abs(in), cmplx.Abs(out.r))
 	if out.openFar {
-		through := s.record.At(energy, right)
+		through := s.through.At(energy)
 		out.t = through.Amplitude / in * cmplx.Rect(math.Sqrt(q*s.near.Mass/(k*s.far.Mass)), -q*p.far)
 		out.delayT = through.Time - p.start*slow - p.far*s.far.Mass/q
 		out.slipT, out.shiftT = e.transmitted(through, cmplx.Abs(in), cmplx.Abs(out.t))

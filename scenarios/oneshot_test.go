@@ -164,8 +164,8 @@ func closest(list []float64, v float64) int {
 }
 
 // Every demo's energies agree with the stationary road within their errors,
-// and the errors are no larger than useful: weighted with the spectrum, below
-// the demo's tolerance where it passes in steps of one size.
+// and the errors are no larger than useful. What remains of a resonance when
+// the run settles, a part of the tolerance in probability, weighs most.
 func TestOneShotOfEveryDemo(t *testing.T) {
 	names := 0
 	for _, d := range Demos() {
@@ -181,7 +181,7 @@ func TestOneShotOfEveryDemo(t *testing.T) {
 			t.Errorf("%s: %s", d.Name, r.Verdict)
 		}
 		for _, c := range r.OneShot.Curves[:2] {
-			if !(c.WorstWeight.Size <= 1e-8) || !(c.WorstWeight.Error <= 1e-5) {
+			if !(c.WorstWeight.Size <= 1e-6) || !(c.WorstWeight.Error <= 1e-4) {
 				t.Errorf("%s: %s off by %.2g, error %.2g", d.Name, c.Name, c.WorstWeight.Size, c.WorstWeight.Error)
 			}
 		}

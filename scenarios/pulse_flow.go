@@ -129,7 +129,10 @@ func (t *Trial) energiesOf(o *outgoing, slow potential.Lead, far bool) energyMea
 		return o.energies(slow)
 	}
 	s := t.shooter()
-	right := far == (t.Plan.side == FromLeft)
+	reader := s.back
+	if far {
+		reader = s.through
+	}
 	var sum, first, second, slowness float64
 	for _, n := range t.Averages.Nodes {
 		e := n.Amplitudes.Energy
@@ -137,7 +140,7 @@ func (t *Trial) energiesOf(o *outgoing, slow potential.Lead, far bool) energyMea
 		if q == 0 {
 			continue
 		}
-		a := square(t.record.At(e, right).Amplitude / s.incoming(n.K))
+		a := square(reader.At(e).Amplitude / s.incoming(n.K))
 		p := n.Weight * a * q * s.near.Mass / (n.K * o.lead.Mass)
 		d := e - o.origin
 		sum += p

@@ -112,8 +112,8 @@ func per(unit string) string {
 func (r *pulseReader) peak(at int) (time, height, slipTime, slipHeight float64) {
 	time, height = r.series.top(at, 1)
 	t, h := r.series.top(at, 2)
-	flow := r.flowSlip()
-	return time, height, math.Abs(t-time) + r.late, math.Abs(h-height) + flow
+	moved := r.phaseMoments().deviation + r.late
+	return time, height, math.Abs(t-time) + moved, math.Abs(h-height) + r.flowSlip() + height*moved/r.steps.deviation
 }
 
 // flowSlip is the error of the flow: what the series and the ledger do not
@@ -130,10 +130,11 @@ func (r *pulseReader) widths() {
 	unit, scale := r.Scenario.Scale.TimeUnit, r.Scenario.Scale.Time
 	m := r.steps
 	tail := r.tailMoments()
-	slip := math.Abs(r.fine.deviation-r.first.deviation) + r.late + tail.deviation
+	phase := r.phaseMoments()
+	slip := math.Abs(r.fine.deviation-r.first.deviation) + r.late + tail.deviation + phase.deviation
 	r.add("width", unit, nil, m.deviation, slip, scale)
 	r.add("skewness", "", nil, m.skewness, math.Abs(r.fine.skewness-r.first.skewness)+
-		tail.skewness+3*(1+math.Abs(m.skewness))*slip/m.deviation, 1)
+		tail.skewness+phase.skewness+3*(1+math.Abs(m.skewness))*slip/m.deviation, 1)
 	if arriving, e, ok := r.Scenario.freeWidth(r.Plan.start); ok {
 		r.addAverage("incoming_width", unit, arriving, e, scale)
 		r.add("broadening", "", nil, m.deviation/arriving, slip/arriving+e*m.deviation/(arriving*arriving), 1)
@@ -141,6 +142,27 @@ func (r *pulseReader) widths() {
 	if free, e, ok := r.Scenario.freeWidth(r.way); ok {
 		r.addAverage("free_width", unit, free, e, scale)
 	}
+}
+
+// phaseMoments is what the phase error of the steps does to the moments: it
+// moves the time of each energy, by which the flow's own deviation may add.
+func (r *pulseReader) phaseMoments() moments {
+	var first, second, total float64
+	p, s := r.Plan, r.steps.deviation
+	for _, e := range p.all {
+		passes, back := e.arrivals(p.geometry)
+		w := e.weight * e.Transmission
+		if !r.far {
+			passes, w = back, e.weight*e.Reflection
+		}
+		slope := math.Min(0.5, math.Abs(p.Pade.SlopeError((e.energy-p.Origin)*p.TimeStep)))
+		moved := w * passes * slope / (1 - slope)
+		d := math.Abs(passes-r.steps.mean) + s
+		first += moved * d
+		second += moved * d * d
+		total += w
+	}
+	return moments{deviation: ratio(first, total*s), skewness: ratio(3*second, total*s*s*s)}
 }
 
 // tailMoments is what the rest, which leaves later, may add to the moments.

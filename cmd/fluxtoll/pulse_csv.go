@@ -3,7 +3,6 @@ package main
 import (
 	"encoding/csv"
 	"io"
-	"slices"
 	"strconv"
 
 	"fluxtoll/scenarios"
@@ -30,8 +29,9 @@ func writeEnergies(w io.Writer, r *scenarios.PulseReport) error {
 		return out.WriteAll([][]string{head})
 	}
 	for _, c := range r.OneShot.Curves {
-		name := bracketed(c.Name, c.Unit)
-		head = append(head, name, "stationary", "error")
+		for _, name := range []string{c.Name, c.Name + "_stationary", c.Name + "_error"} {
+			head = append(head, bracketed(name, c.Unit))
+		}
 	}
 	rows := [][]string{head}
 	for i, e := range r.OneShot.Energy {
@@ -41,7 +41,7 @@ func writeEnergies(w io.Writer, r *scenarios.PulseReport) error {
 				row = append(row, exactOrNone(v))
 			}
 		}
-		rows = append(rows, slices.Clone(row))
+		rows = append(rows, row)
 	}
 	return out.WriteAll(rows)
 }

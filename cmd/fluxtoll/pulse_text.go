@@ -101,7 +101,7 @@ func shotTable(o *scenarios.OneShot, u scenarios.Units) string {
 		row := []string{short(o.Energy[i]), brief(o.Weight[i])}
 		for _, c := range []*scenarios.ShotCurve{through, back, delay} {
 			e := first(c.Error[i])
-			row = append(row, cell(c.Packet[i], e, 12), offBy(c, i))
+			row = append(row, cell(c.Packet[i], e, 10), offBy(c, i))
 		}
 		t = append(t, append(row, ""))
 	}
