@@ -56,7 +56,7 @@ func within(t *testing.T, what string, got, bound, want, useful float64) {
 // of its square over the spectrum, and it comes (2n+1) d/q after the first
 // face, a round trip of 2d/q later than the one before.
 func TestEchoesOfASlab(t *testing.T) {
-	const k0, length, d, depth = 2.0, 4.0, 110.0, 30.0
+	const k0, length, d, depth = 2.0, 4.0, 200.0, 30.0
 	r := pulses(t, fmt.Sprintf("units = \"natural\"\n[[layer]]\nthickness = %g\nheight = %g\n[packet]\nenergy = %g\nlength = %g\n", d, -depth, k0*k0/2, length))
 	start, near, far := -r.Planes.Start, -r.Planes.Near, r.Planes.Far-d
 	part := func(term func(k, q, r float64) (amplitude, time float64)) (probability, mean float64) {
