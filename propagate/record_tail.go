@@ -7,7 +7,7 @@ import (
 // TailMoments are the integrals of the flow outward through the left or the
 // right plane after the tail's moment, times (t-Time)^n for n = 0 to 3, as
 // sums over steps continue them (see Tail): with x = lambda dt and
-// c = coth(x/2), the means of the powers of (n + 1/2) over exp(-x n) are 1, c/2,
+// c = coth(x/2), or what the step makes of it, the means of the powers of (n + 1/2) over exp(-x n) are 1, c/2,
 // c^2/2 - 1/4 and (6 c^3 - 5 c)/8.
 func (t *Tail) TailMoments(right bool) [4]float64 {
 	var out [4]float64
@@ -29,8 +29,7 @@ func (t *Tail) addMoments(out *[4]float64, u, v Held, count float64, right bool)
 	}
 	lambda, dt := rate(u.State, v.State), complex(t.Step, 0)
 	q := cmplx.Conj(u.Amplitude) * v.Amplitude * complex(count, 0) * f / lambda
-	x := lambda * dt / 2
-	c := cmplx.Cosh(x) / cmplx.Sinh(x)
+	c := 2 / dt * t.now.delay(u.State, v.State)
 	for n, mean := range [4]complex128{1, dt * c / 2, dt * dt * (c*c/2 - 0.25), dt * dt * dt * (6*c*c*c - 5*c) / 8} {
 		out[n] += real(q * mean)
 	}

@@ -28,12 +28,16 @@ type Ending struct {
 // checkEvery is how many steps lie between two looks at what remains.
 const checkEvery = 4
 
+// fadeOfLook is the part of a peak that is remembered from one look to the next:
+// what a look finds may by chance be between two crests.
+const fadeOfLook = 0.25
+
 // look is what the last look at the probability between the planes found.
 type look struct {
 	Remaining float64 // that probability
 	Lifetime  float64 // time in which it fell by a factor e; +Inf where it did not fall
 	Flow      float64 // Ledger.FlowPeak, but for what the states send
-	Cross     float64 // interference of what remains with the states, see Tail.Cross; its peak of late, forgotten like FlowPeak
+	Cross     float64 // interference of what remains with the states, see Tail.Cross; its peak of late
 	time      float64
 	tail      *Tail // of a settled run
 }
@@ -88,7 +92,7 @@ func (r *Run) Next() Status {
 			return Settled
 		}
 		if r.ending.Slow != nil && r.ending.Slow(l, r.Remaining, r.Lifetime) {
-			r.Lengthen()
+			r.lengthen()
 		}
 	}
 	return limit
@@ -116,19 +120,30 @@ func (r *Run) inspect() {
 	r.splitter.split(r.psi)
 	rest, cross := r.splitter.remaining()
 	flow := math.Max(
-		math.Abs(l.FlowLeft-r.splitter.flow(r.Step, false)),
-		math.Abs(l.FlowRight-r.splitter.flow(r.Step, true)),
+		math.Abs(l.FlowLeft-r.splitter.flow(r.stepping(), false)),
+		math.Abs(l.FlowRight-r.splitter.flow(r.stepping(), true)),
 	)
 	r.look = r.next(rest, l.Time)
-	fade := math.Pow(forgotten, checkEvery)
-	r.Flow = math.Max(flow, fade*r.Flow)
-	r.Cross = math.Max(cross, fade*r.Cross)
+	r.Flow = math.Max(flow, fadeOfLook*r.Flow)
+	r.Cross = math.Max(cross, fadeOfLook*r.Cross)
+}
+
+// lengthen is Lengthen, after the look just taken. The states' part of the
+// sums of times goes on as in the steps before, whatever the step is from now
+// on: the difference is booked here.
+func (r *Run) lengthen() {
+	before := r.stepping()
+	if !r.Lengthen() || r.splitter == nil {
+		return
+	}
+	l := r.Ledger()
+	l.adjust(r.splitter.tail(l.Time, before), r.splitter.tail(l.Time, r.stepping()))
 }
 
 // finish makes the tail of the look just taken.
 func (r *Run) finish() {
 	if r.splitter != nil {
-		r.tail = r.splitter.tail(r.Ledger().Time, r.Step)
+		r.tail = r.splitter.tail(r.Ledger().Time, r.stepping())
 	}
 }
 

@@ -16,11 +16,11 @@ import (
 // pairs, which interfere, included. Its integral over time has 1/lambda
 // instead of the exponential, its first moment 1/lambda^2. Bound states stay.
 //
-// Times are continued as the ledger takes them, once a step: its sums are of
-// spectral accuracy because the flow vanishes at both ends, and one
-// that breaks off and goes on as an integral is not. With x = lambda dt,
-// the geometric series give (dt/2) coth(x/2) where the integral has 1/lambda, and
-// dt^2 (coth(x/2)^2/2 - 1/4) where it has 2/lambda^2.
+// Times are continued as the ledger takes them, once a step, for ever: its sums
+// are of spectral accuracy because the flow vanishes at both ends, and one
+// that breaks off and goes on as an integral is not. With the factor r by which
+// a step multiplies a pair, the geometric series give the mean delay
+// (dt/2)(1+r)/(1-r) where the integral has 1/lambda.
 type Tail struct {
 	Time        float64 // the moment
 	Step        float64 // dt
@@ -31,6 +31,7 @@ type Tail struct {
 	Rest        float64 // probability between the planes of what the states do not span
 	Cross       float64 // what rest and states have between the planes by interfering, each state's modulus: nobody's yet
 	Error       TailError
+	now         stepping
 }
 
 // Held is what a state holds at the moment of the tail.
@@ -47,6 +48,40 @@ type TailError struct {
 	FirstLeft, FirstRight float64 // of the flux-weighted sums of times
 	Dwell                 float64
 }
+
+// stepping is how the stepper steps at present.
+type stepping struct {
+	pade       Pade
+	dt, origin float64
+}
+
+// change is r-1 for the pair u, v: r = conj(R(z_u)) R(z_v), R the step and
+// z = -i dt (E - origin), with
+//
+//	r = product over the poles p of 1 + 2 Re(p) s/((z_v-p) conj(z_u-p)),
+//	s = z_v + conj z_u = -lambda dt,
+//
+// which keeps its relative accuracy however small lambda is.
+func (s stepping) change(u, v *Eigenstate) complex128 {
+	z := func(w *Eigenstate) complex128 {
+		return complex(-w.Width()/2*s.dt, -(real(w.Energy)-s.origin)*s.dt)
+	}
+	zu, zv, sum, change := z(u), z(v), -rate(u, v)*complex(s.dt, 0), complex(0, 0)
+	for _, p := range s.pade.Poles {
+		w := complex(2*real(p), 0) * sum / ((zv - p) * cmplx.Conj(zu-p))
+		change += w + change*w
+	}
+	return change
+}
+
+// delay is the mean delay of a pair.
+func (s stepping) delay(u, v *Eigenstate) complex128 {
+	c := s.change(u, v)
+	return complex(-s.dt/2, 0) * (2 + c) / c
+}
+
+// stepping is that of the present gear.
+func (s *Stepper) stepping() stepping { return stepping{s.Pade, s.Step, s.Origin} }
 
 // splitter splits waves of one mesh into eigenstates and a rest.
 type splitter struct {
@@ -87,24 +122,23 @@ func (p *splitter) remaining() (rest, cross float64) {
 }
 
 // flow is the mean flow through a plane over the last step that belongs to the
-// states.
-func (p *splitter) flow(dt float64, right bool) float64 {
+// states: what they had to send before it, less what they have now.
+func (p *splitter) flow(now stepping, right bool) float64 {
 	total := 0.0
 	for i, u := range p.states {
 		for j, v := range p.states[:i+1] {
-			x := complex(dt, 0) * rate(u, v)
-			mean := complex(1, 0)
-			if cmplx.Abs(x) > 1e-8 {
-				mean = (cmplx.Exp(x) - 1) / x
+			lambda, c := rate(u, v), now.change(u, v)
+			if lambda == 0 {
+				continue // a bound state sends nothing
 			}
 			f := u.left.flow(v.left)
 			if right {
 				f = u.right.flow(v.right)
 			}
-			total += twice(i, j) * real(cmplx.Conj(p.c[i])*p.c[j]*f*mean)
+			total -= twice(i, j) * real(cmplx.Conj(p.c[i])*p.c[j]*f/lambda*c/(1+c))
 		}
 	}
-	return total
+	return total / now.dt
 }
 
 // twice counts pairs of different states in both orders.
@@ -122,10 +156,10 @@ func rate(u, v *Eigenstate) complex128 {
 }
 
 // tail closes the split: what the states will still do.
-func (p *splitter) tail(time, dt float64) *Tail {
+func (p *splitter) tail(time float64, now stepping) *Tail {
 	m := p.mesh
 	t := &Tail{
-		Time: time, Step: dt, Lost: make([]float64, len(m.layerSpan)), Dwell: make([]float64, len(m.layerSpan)),
+		Time: time, Step: now.dt, now: now, Lost: make([]float64, len(m.layerSpan)), Dwell: make([]float64, len(m.layerSpan)),
 	}
 	t.Rest, t.Cross = p.remaining()
 	for i, u := range p.states {
@@ -148,11 +182,11 @@ func (t *Tail) pair(i, j int) {
 	a := cmplx.Conj(t.Held[i].Amplitude) * t.Held[j].Amplitude * complex(twice(i, j), 0)
 	doubt := t.doubt(i, j)
 	left, right := a*u.left.flow(v.left), a*u.right.flow(v.right)
-	delay := t.delay(lambda)
+	delay := t.now.delay(u, v)
 	t.Left.collect(t.Time, t.Step, left/lambda, delay)
 	t.Right.collect(t.Time, t.Step, right/lambda, delay)
 	passed := cmplx.Abs(left/lambda) + cmplx.Abs(right/lambda)
-	size := func(f complex128) float64 { return doubt * (cmplx.Abs(f/lambda)*t.Time + 2*cmplx.Abs(f/lambda/lambda)) }
+	size := func(f complex128) float64 { return doubt * (cmplx.Abs(f/lambda)*t.Time + 2*cmplx.Abs(f/lambda*delay)) }
 	t.Error.FirstLeft += size(left)
 	t.Error.FirstRight += size(right)
 	for n, span := range u.mesh.layerSpan {
@@ -175,15 +209,6 @@ func (t *Tail) doubt(i, j int) float64 {
 	}
 	mixed := cmplx.Abs(u.mesh.product(u.wave, v.wave)) / math.Sqrt(cmplx.Abs(u.Norm*v.Norm))
 	return mixed + (u.EnergyError+v.EnergyError)/cmplx.Abs(rate(u, v))
-}
-
-// delay is (dt/2) coth(lambda dt/2).
-func (t *Tail) delay(lambda complex128) complex128 {
-	x := lambda * complex(t.Step/2, 0)
-	if cmplx.Abs(x) < 1e-3 { // the next term of the series is 2/945 x^6
-		return (1 + x*x/3 - x*x*x*x/45) / lambda
-	}
-	return complex(t.Step/2, 0) * cmplx.Cosh(x) / cmplx.Sinh(x)
 }
 
 // collect adds the probability q, real part of a term, that passes with a mean

@@ -102,9 +102,10 @@ func (p *planner) expectedEnd(taken []stationary.Pole) float64 {
 	end, held := 0.0, 0.0
 	for _, s := range p.samples {
 		held += s.weight
-		if held < fraction || s.SpeedIn == 0 || s.waits(taken) {
+		if held < fraction || s.SpeedIn == 0 {
 			continue
 		}
+		s.forgetDelays(taken)
 		pass := 2 * clearance(fraction) * p.scenario.Packet.Length / s.SpeedIn
 		back := (p.start+p.geometry.near)/s.SpeedIn + s.GroupDelayReflected
 		end = math.Max(end, pass+back)

@@ -2,11 +2,7 @@ package scenarios
 
 import "math"
 
-// A resonance is slow where it lives for more than slowPassages times the
-// packet's passage length/v0.
-const slowPassages = 100
-
-// caught charges what slow resonances catch directly of the packet's front, the
+// caught charges what resonances catch directly of the packet's front, the
 // part that lies in the structure at the start: it is in no spectrum, and adds
 // coherently to what a resonance catches in passing. By the inequality of
 // Cauchy and Schwarz its amplitude in a state is at most the root of its
@@ -18,9 +14,6 @@ func (p *planner) caught(g geometry) errorSet {
 	front := math.Erfc(g.start/packet.Length/math.Sqrt2) / 2
 	speed := packet.K0 / p.near.Mass
 	for _, r := range p.averages.Resonances {
-		if r.Width*packet.Length*slowPassages > speed {
-			continue
-		}
 		change := 2*math.Sqrt(front*p.heldBy(r.Energy, r.Width)) + front
 		e.transmitted += change
 		e.dwell += change / r.Width

@@ -8,11 +8,11 @@ import (
 	"fluxtoll/propagate"
 )
 
-// A run is finished by poles where waiting for the resonances would make it
-// longer by more than worthPoles; then all resonances are taken of which, at
-// the end of the prompt part, more than exp(-stillThere) is left.
+// A run is finished by poles where one of them, at the end of the prompt part,
+// still holds more than exp(-worthPoles) of what it did; then all resonances are
+// taken that hold more than exp(-stillThere).
 const (
-	worthPoles = 1.3
+	worthPoles = 8
 	stillThere = 25
 	mostPoles  = 200
 )
@@ -21,9 +21,9 @@ const (
 // states of the mesh's own operator, starting from those of the averages. A
 // resonance whose state is not found is waited for.
 func (p *planner) poles() {
-	all := p.expectedEnd(nil)
-	slow := p.slow(p.expectedEnd(p.averages.Resonances))
-	if len(slow) == 0 || len(slow) > mostPoles || all < worthPoles*p.expectedEnd(slow) {
+	end := p.expectedEnd(p.averages.Resonances)
+	slow := p.outlasting(end, stillThere)
+	if len(p.outlasting(end, worthPoles)) == 0 || len(slow) > mostPoles {
 		return
 	}
 	for _, r := range slow {
@@ -34,11 +34,11 @@ func (p *planner) poles() {
 	}
 }
 
-// slow lists the resonances that are still there at a time.
-func (p *planner) slow(end float64) []stationary.Pole {
+// outlasting lists the resonances that hold more than exp(-decay) at a time.
+func (p *planner) outlasting(end, decay float64) []stationary.Pole {
 	var out []stationary.Pole
 	for _, r := range p.averages.Resonances {
-		if r.Width*end < stillThere {
+		if r.Width*end < decay {
 			out = append(out, r)
 		}
 	}
@@ -66,17 +66,23 @@ func (p *planner) state(mesh *propagate.Mesh, r stationary.Pole) *propagate.Eige
 	return u
 }
 
-// waits reports whether an energy's own delay is that of a resonance whose
-// states are taken, which the run does not wait for. Each pole adds
+// forgetDelays sets the delays to 0 if they are those of resonances that are
+// taken, which the run does not wait for. Each pole adds
 // (Width/2)/((E-Energy)^2 + Width^2/4) to the delay of t, and up to twice
 // that to the delay of r.
-func (s sample) waits(taken []stationary.Pole) bool {
+func (s *sample) forgetDelays(taken []stationary.Pole) {
+	const near = 1000 // widths: within them r may have a zero, around which its delay has any size
 	share := 0.0
 	for _, r := range taken {
 		d := s.energy - r.Energy
+		if math.Abs(d) < near*r.Width {
+			share = math.Inf(1)
+		}
 		share += r.Width / 2 / (d*d + r.Width*r.Width/4)
 	}
-	return 4*share > math.Max(math.Abs(s.GroupDelayReflected), math.Abs(s.GroupDelayTransmitted))
+	if 4*share > math.Max(math.Abs(s.GroupDelayReflected), math.Abs(s.GroupDelayTransmitted)) {
+		s.GroupDelayReflected, s.GroupDelayTransmitted = 0, 0
+	}
 }
 
 // poleTail charges what the states of a tail are not known to, and what they
@@ -114,7 +120,7 @@ type Tail struct {
 	// What the tail adds to the mean arrivals, absent where nothing arrives.
 	ArrivalReflected   *float64 `json:"arrival_reflected,omitempty"`
 	ArrivalTransmitted *float64 `json:"arrival_transmitted,omitempty"`
-	Error              float64  `json:"error"` // of its probabilities, and of what it adds to times as a part of them
+	Error              float64  `json:"error"` // of each number: absolute for probabilities, relative for times
 	States             []Level  `json:"states"`
 }
 
@@ -139,7 +145,8 @@ func (t *Trial) tailReport() *Tail {
 	if t.Plan.side == FromRight {
 		near, far, steppedNear, steppedFar = far, near, steppedFar, steppedNear
 	}
-	probability, time := t.poleTail().relative(t.Averages, t.means())
+	own := t.tail(stepped, t.Run.Remaining, t.Run.Lifetime).plus(t.poleTail())
+	probability, time := own.relative(t.Averages, t.means())
 	out := &Tail{
 		Poles: len(tail.Held), Time: tail.Time * unit.Time,
 		Reflected: near.Probability, Transmitted: far.Probability, Lost: tail.TotalLost(),

@@ -40,7 +40,9 @@ func Prepare(ctx context.Context, s *Scenario, forced Forced) (*Trial, error) {
 	}
 	spectrum := stationary.Spectrum{K0: s.Packet.K0, Width: 1 / (2 * s.Packet.Length)}
 	relative := math.Max(1e-13, math.Min(1e-10, 1e-3*s.Tolerance))
-	averages, err := solver.Average(ctx, spectrum, stationary.Options{Relative: relative})
+	averages, err := solver.Average(ctx, spectrum, stationary.Options{
+		Relative: relative, MaxEvaluations: evaluations(solver.Work(s.Packet.Energy)),
+	})
 	if averages == nil {
 		return nil, fmt.Errorf("average: %w", err)
 	}
@@ -59,6 +61,13 @@ func Prepare(ctx context.Context, s *Scenario, forced Forced) (*Trial, error) {
 		t.Plan, t.Refused = nil, err
 	}
 	return t, nil
+}
+
+// evaluations bounds the energies of the averages by the work that each makes:
+// to about a minute, but to 200,000 at most and to 500 at least.
+func evaluations(work float64) int {
+	const most, least, minute = 200_000, 500, 3e8 // flat layers crossed
+	return int(math.Max(least, math.Min(most, minute/work)))
 }
 
 // plan makes the plan and the run.
@@ -89,7 +98,7 @@ func (t *Trial) ending() propagate.Ending {
 	if t.forced.StopTime == 0 {
 		e.States = t.Plan.States
 	}
-	if t.forced.TimeStep == 0 && len(e.States) == 0 {
+	if t.forced.TimeStep == 0 {
 		e.Slow = t.mayLengthen
 	}
 	if t.forced.StopTime > 0 {
