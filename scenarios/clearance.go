@@ -23,8 +23,28 @@ func (p *planner) startError(g geometry) errorSet {
 	front.transmitted, front.reflected, front.lost = most, most, most
 	back := p.cutError(g, g.behind-g.start)
 	beyond := func(d float64) float64 { return math.Erfc(d/p.scenario.Packet.Length/math.Sqrt2) / 2 }
-	total := front.plus(back).plus(p.mismatch(g)).plus(p.caught(g))
+	total := front.plus(back).plus(p.mismatch(g)).plus(p.caught(g)).plus(p.slowest(g))
 	return total.plus(p.misplaced(g, wrongWay(p.scenario.Packet)+beyond(g.start)+beyond(g.near-g.start)))
+}
+
+// slowest is what components at k = 0 do to the mean arrivals, which diverge
+// logarithmically there: the density |phi(0)|^2 = sqrt(2/pi) length
+// exp(-2 length^2 k0^2), times the flight, times the mass, for each power of e
+// in k. The averages cut it after many of them, a run when it ends.
+func (p *planner) slowest(g geometry) errorSet {
+	const powers = 30
+	s := p.scenario.Packet.Length
+	density := math.Sqrt(2/math.Pi) * s * math.Exp(-2*s*s*p.k0*p.k0)
+	m := p.means(g)
+	late := powers * density * p.near.Mass
+	var e errorSet
+	if m.transmitted > leastPart {
+		e.arrivalTransmitted = late * (g.start + g.far) / m.transmitted
+	}
+	if m.reflected > leastPart {
+		e.arrivalReflected = late * (g.start + g.near) / m.reflected
+	}
+	return e
 }
 
 // mismatch is the effect of the packet's front on times that are sampled once a
@@ -168,6 +188,6 @@ func (p *planner) positions() {
 // excess is the start's error, less what no distance removes, as a multiple
 // of the tolerance.
 func (p *planner) excess() float64 {
-	wrong := p.misplaced(p.geometry, wrongWay(p.scenario.Packet))
-	return p.weight(p.start0) - p.weight(wrong)
+	fixed := p.misplaced(p.geometry, wrongWay(p.scenario.Packet)).plus(p.slowest(p.geometry))
+	return p.weight(p.start0) - p.weight(fixed)
 }

@@ -38,6 +38,7 @@ func (f *File) compile() (*Scenario, error) {
 		return nil, err
 	}
 	s.Scale = c.scale(s.Packet.Length)
+	s.Notes = c.notes()
 	return s, nil
 }
 
@@ -172,4 +173,16 @@ func (f *File) blame(err error) error {
 		}
 	}
 	return out
+}
+
+// notes remarks on a packet so fast that the model does not hold.
+func (c *compiler) notes() []string {
+	const noticed = 0.1
+	if c.file.Natural {
+		return nil
+	}
+	if fraction := c.length / c.time / lightSpeed; fraction > noticed {
+		return []string{fmt.Sprintf("the packet moves at %.2g of the speed of light; the model is not relativistic", fraction)}
+	}
+	return nil
 }

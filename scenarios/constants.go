@@ -4,7 +4,7 @@ import "math"
 
 // The constants of nature behind the units: CODATA 2022 (P. J. Mohr,
 // D. B. Newell, B. N. Taylor and E. Tiesinga, Rev. Mod. Phys. 97, 025002
-// (2025)). The first three are exact by the definition of the SI.
+// (2025)). Those marked exact are so by the definition of the SI.
 const (
 	planck            = 6.62607015e-34   // h in J s, exact
 	boltzmann         = 1.380649e-23     // k_B in J/K, exact
@@ -13,6 +13,7 @@ const (
 	atomicMass        = 1.66053906892e-27
 	neutronMass       = 1.67492750056e-27
 	protonMass        = 1.67262192595e-27
+	lightSpeed        = 299.792458          // c in nm/fs, exact
 	kilogram          = 1e12 / electronVolt // in eV fs^2/nm^2
 	hbarElectronVolts = planck / electronVolt / (2 * math.Pi) * 1e15
 )

@@ -75,7 +75,7 @@ func newOutlook(t *Trial) *Outlook {
 // schedule fills what follows from the plan.
 func (t *Trial) schedule(o *Outlook) {
 	p, unit := t.Plan, t.Scenario.Scale
-	o.Planes = &PlanesAt{p.at(p.near) * unit.Length, p.farAt() * unit.Length, p.at(p.start) * unit.Length}
+	o.Planes = &PlanesAt{p.at(p.near) * unit.Length, p.farAt() * unit.Length, p.at(p.start) * unit.Length, p.width * unit.Length}
 	x := p.extent()
 	o.From, o.To = x.Left*unit.Length, x.Right*unit.Length
 	o.Duration = p.Expected * unit.Time

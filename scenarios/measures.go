@@ -5,6 +5,7 @@ import (
 	"math"
 
 	"fluxtoll/potential/stationary"
+	"fluxtoll/propagate"
 )
 
 // measurer builds the quantities of a result. limits is the budget of each,
@@ -78,7 +79,7 @@ type part struct {
 	delay, arrival stationary.Mean
 	planeDelay     *float64
 	planeFlight    float64
-	packet         float64 // measured arrival
+	packet         *float64 // measured arrival, nil where next to nothing passed
 	budget         float64
 }
 
@@ -99,13 +100,26 @@ func (m *measurer) times() {
 			plane = &arrival
 		}
 		allowed := m.Scenario.timeTolerance() * p.arrival.Value
-		m.add(Measure{Name: "arrival_" + p.name, Unit: unit}, p.arrival, plane, &p.packet, p.budget, allowed, scale)
+		m.add(Measure{Name: "arrival_" + p.name, Unit: unit}, p.arrival, plane, p.packet, p.budget, allowed, scale)
 	}
 	for _, p := range both {
-		packet := p.packet - (p.arrival.Value - p.delay.Value)
+		var packet *float64
+		if p.packet != nil {
+			delay := *p.packet - (p.arrival.Value - p.delay.Value)
+			packet = &delay
+		}
 		allowed := m.Scenario.timeTolerance() * p.arrival.Value
-		m.add(Measure{Name: "group_delay_" + p.name, Unit: unit}, p.delay, p.planeDelay, &packet, p.budget, allowed, scale)
+		m.add(Measure{Name: "group_delay_" + p.name, Unit: unit}, p.delay, p.planeDelay, packet, p.budget, allowed, scale)
 	}
+}
+
+// measured is the mean time of a passage, or nil where next to nothing passed.
+func measured(p propagate.Passage) *float64 {
+	if p.Flux() <= leastPart {
+		return nil
+	}
+	t := p.MeanTime()
+	return &t
 }
 
 // parts describes the transmitted and the reflected part.
@@ -115,14 +129,14 @@ func (m *measurer) parts() []part {
 	arrivalT, arrivalR := m.averageArrivals()
 	t := part{
 		name: "transmitted", probability: a.Transmitted.Value, delay: a.GroupDelayTransmitted,
-		arrival: arrivalT, packet: far.MeanTime(), budget: m.limits.arrivalTransmitted,
+		arrival: arrivalT, packet: measured(far), budget: m.limits.arrivalTransmitted,
 	}
 	if w.SpeedOut > 0 {
 		t.planeDelay, t.planeFlight = &w.GroupDelayTransmitted, plan.start/w.SpeedIn+plan.far/w.SpeedOut
 	}
 	r := part{
 		name: "reflected", probability: a.Reflected.Value, delay: a.GroupDelayReflected,
-		arrival: arrivalR, packet: near.MeanTime(), budget: m.limits.arrivalReflected,
+		arrival: arrivalR, packet: measured(near), budget: m.limits.arrivalReflected,
 	}
 	if w.Reflection > 0 {
 		r.planeDelay, r.planeFlight = &w.GroupDelayReflected, (plan.start+plan.near)/w.SpeedIn
@@ -136,10 +150,10 @@ func (m *measurer) delays() {
 	a, w := m.Averages, m.PlaneWave
 	unit, scale := m.Scenario.Scale.TimeUnit, m.Scenario.Scale.Time
 	if a.Transmitted.Value > leastPart {
-		m.add(Measure{Name: "group_delay_transmitted", Unit: unit}, a.GroupDelayTransmitted, &w.GroupDelayTransmitted, nil, 0, 0, scale)
+		m.add(Measure{Name: "group_delay_transmitted", Unit: unit}, a.GroupDelayTransmitted, &w.GroupDelayTransmitted, nil, 0, m.Scenario.timeTolerance()*math.Abs(a.GroupDelayTransmitted.Value), scale)
 	}
 	if a.Reflected.Value > leastPart {
-		m.add(Measure{Name: "group_delay_reflected", Unit: unit}, a.GroupDelayReflected, &w.GroupDelayReflected, nil, 0, 0, scale)
+		m.add(Measure{Name: "group_delay_reflected", Unit: unit}, a.GroupDelayReflected, &w.GroupDelayReflected, nil, 0, m.Scenario.timeTolerance()*math.Abs(a.GroupDelayReflected.Value), scale)
 	}
 }
 
@@ -158,8 +172,12 @@ func (m *measurer) dwell() {
 // notes are remarks that a reader of the numbers needs.
 func (t *Trial) notes() []string {
 	var out []string
+	out = append(out, t.Scenario.Notes...)
 	if t.Refused != nil {
 		out = append(out, t.Refused.Error())
+	}
+	if away := wrongWay(t.Scenario.Packet); away > t.Scenario.Tolerance {
+		out = append(out, fmt.Sprintf("up to %.2g of the packet moves away from the structure or interferes with what does: it is too short for its energy, and the averages leave that out", away))
 	}
 	if t.unsettled != nil {
 		out = append(out, "the averages did not reach their accuracy: "+t.unsettled.Error())

@@ -1,6 +1,7 @@
 package scenarios
 
 import (
+	"bytes"
 	"errors"
 	"io"
 	"path/filepath"
@@ -16,7 +17,10 @@ const mostLayers = 20_000
 func Read(name string, src io.Reader, open OpenFunc) (*File, error) {
 	text, err := readText(src)
 	r := &reader{file: &File{Name: name, Tolerance: DefaultTolerance, source: string(text)}, open: open}
-	if err == nil {
+	switch {
+	case err == nil && len(bytes.TrimSpace(text)) == 0:
+		err = &fault{msg: "is empty", accepted: "a scenario (TOML) is accepted; 'fluxtoll demos' lists some to start from"}
+	case err == nil:
 		err = r.document(text)
 	}
 	if err != nil {

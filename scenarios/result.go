@@ -64,6 +64,7 @@ type PlanesAt struct {
 	Near  float64 `json:"near"`
 	Far   float64 `json:"far"`
 	Start float64 `json:"start"`
+	Width float64 `json:"width"` // of the structure: its far face b
 }
 
 // Verdict is the outcome of the comparison.
@@ -94,10 +95,13 @@ func (t *Trial) Result(status propagate.Status) *Result {
 		total, summary, ledger := list.total(), t.summary(list), t.ledger()
 		limits, r.Budget, r.Ledger = &total, &summary, &ledger
 		p := t.Plan
-		r.Planes = &PlanesAt{p.at(p.near) * s.Length, p.farAt() * s.Length, p.at(p.start) * s.Length}
+		r.Planes = &PlanesAt{p.at(p.near) * s.Length, p.farAt() * s.Length, p.at(p.start) * s.Length, p.width * s.Length}
 		numerics := t.numerics()
 		r.Numerics = &numerics
 		r.Tail = t.tailReport()
+	}
+	if t.Refused != nil {
+		r.Ended = "refused"
 	}
 	r.Quantities = t.measures(limits)
 	r.Shift = t.shiftsOnBoth(limits, status)

@@ -16,6 +16,7 @@ type Scenario struct {
 	Packet    Packet
 	Planes    Planes
 	Scale     Scale
+	Notes     []string // remarks on what the scenario asks for
 }
 
 // Side is the lead a packet comes from.

@@ -54,6 +54,24 @@ func (p *progressLine) show(now scenarios.Progress) {
 	p.write(progressText(now))
 }
 
+// waiting shows a text once the run has lasted long enough, until done is
+// called.
+func (p *progressLine) waiting(text string) (done func()) {
+	stop, finished := make(chan struct{}), make(chan struct{})
+	go func() {
+		defer close(finished)
+		select {
+		case <-stop:
+		case <-time.After(quiet):
+			p.write(text)
+		}
+	}()
+	return func() {
+		close(stop)
+		<-finished
+	}
+}
+
 // progressText is what the line says.
 func progressText(now scenarios.Progress) string {
 	left := fmt.Sprintf("about %s left", duration(now.Left))

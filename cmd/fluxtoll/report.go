@@ -147,7 +147,8 @@ func planesText(r *scenarios.Result) string {
 		return ""
 	}
 	at := func(x float64) string { return withUnit(x, r.Units.Length) }
-	return fmt.Sprintf("near %s, start %s, far %s", at(r.Planes.Near), at(r.Planes.Start), at(r.Planes.Far))
+	return fmt.Sprintf("near %s, start %s, far %s; structure from 0 to %s",
+		at(r.Planes.Near), at(r.Planes.Start), at(r.Planes.Far), at(r.Planes.Width))
 }
 
 func numericsText(r *scenarios.Result) string {

@@ -91,7 +91,9 @@ func named(s *scenarios.Scenario) string {
 func compute(ctx context.Context, s *scenarios.Scenario, forced scenarios.Forced, stderr io.Writer) (*scenarios.Result, error) {
 	line := newProgressLine(stderr)
 	defer line.erase()
+	ready := line.waiting("averaging over the packet's spectrum, planning the grid")
 	trial, err := scenarios.Prepare(ctx, s, forced)
+	ready()
 	if err != nil {
 		return nil, err
 	}
