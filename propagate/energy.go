@@ -22,12 +22,12 @@ func (m *moments) meanAndSpread() (mean, spread float64) {
 	return mean, math.Sqrt(math.Max(0, m.second/m.norm-mean*mean))
 }
 
-// smooth returns (z-p)^-2 psi, z = -i dt (H-origin), p a pole of the step: the
+// smooth returns (z-p)^-2 psi for a wave psi, z = -i dt (H-origin), p a pole of the step: the
 // wave without what lies far above the energies that the step follows, such as
 // the waves of the grid that sampling a packet leaves behind.
-func (s *Stepper) smooth() wave {
+func (s *Stepper) smooth(psi wave) wave {
 	f, w, lost := s.factors[0], newWave(s.Mesh), make([]float64, len(s.lost))
-	copy(w.all, s.psi.all)
+	copy(w.all, psi.all)
 	before := make([]complex128, len(w.all))
 	for range 2 {
 		copy(before, w.all)

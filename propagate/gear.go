@@ -41,8 +41,11 @@ const (
 // and its decay is ever slower. The step grows by powers of two, and phases
 // are counted from the mean energy of what remains. It reports whether the
 // step changed.
-func (s *Stepper) Lengthen() bool {
-	mean, spread := s.energy(s.smooth())
+func (s *Stepper) Lengthen() bool { return s.lengthenFor(s.psi) }
+
+// lengthenFor is Lengthen where a part of psi is all that counts.
+func (s *Stepper) lengthenFor(part wave) bool {
+	mean, spread := s.energy(s.smooth(part))
 	dt := math.Min(1/(slowSpread*spread), s.ledger.Time/slowParts)
 	if !(dt >= 2*s.Step) {
 		return false

@@ -86,19 +86,6 @@ func (l *Ledger) enter(dt, left, right float64, lost []float64) {
 // mark notes that the step size changes now.
 func (l *Ledger) mark() { l.since, l.sinceSteps = l.Time, l.Steps }
 
-// adjust replaces what will be booked as times of a tail by what should be.
-func (l *Ledger) adjust(should, will *Tail) {
-	for _, p := range []struct{ to, should, will *Passage }{
-		{&l.Left, &should.Left, &will.Left}, {&l.Right, &should.Right, &will.Right},
-	} {
-		p.to.first += p.should.first - p.will.first
-		p.to.second += p.should.second - p.will.second
-	}
-	for i := range l.Dwell {
-		l.Dwell[i] += should.Dwell[i] - will.Dwell[i]
-	}
-}
-
 // TotalLost is the probability absorbed in all layers.
 func (l *Ledger) TotalLost() float64 { return sum(l.Lost) }
 

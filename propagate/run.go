@@ -40,6 +40,7 @@ type look struct {
 	Cross     float64 // interference of what remains with the states, see Tail.Cross; its peak of late
 	time      float64
 	tail      *Tail // of a settled run
+	owed      *Tail // what changes of the step leave to be added to the times of a tail
 }
 
 // firstLook is the look before any was taken.
@@ -51,7 +52,7 @@ func (l look) next(remaining, time float64) look {
 	if time == l.time {
 		return l
 	}
-	n := look{Remaining: remaining, Lifetime: math.Inf(1), Flow: l.Flow, Cross: l.Cross, time: time}
+	n := look{Remaining: remaining, Lifetime: math.Inf(1), Flow: l.Flow, Cross: l.Cross, time: time, owed: l.owed}
 	if remaining < l.Remaining {
 		n.Lifetime = (time - l.time) / math.Log(l.Remaining/remaining)
 	}
@@ -128,22 +129,27 @@ func (r *Run) inspect() {
 	r.Cross = math.Max(cross, fadeOfLook*r.Cross)
 }
 
-// lengthen is Lengthen, after the look just taken. The states' part of the
-// sums of times goes on as in the steps before, whatever the step is from now
-// on: the difference is booked here.
+// lengthen is Lengthen, after the look just taken; with states, for what they do
+// not span. Their part of the sums of times goes on as in the steps before,
+// whatever the step is from now on: the difference is kept until the tail is
+// made.
 func (r *Run) lengthen() {
-	before := r.stepping()
-	if !r.Lengthen() || r.splitter == nil {
+	if r.splitter == nil {
+		r.Lengthen()
 		return
 	}
-	l := r.Ledger()
-	l.adjust(r.splitter.tail(l.Time, before), r.splitter.tail(l.Time, r.stepping()))
+	before := r.stepping()
+	if !r.lengthenFor(r.splitter.rest) {
+		return
+	}
+	time := r.Ledger().Time
+	r.owed = r.splitter.tail(time, before).less(r.splitter.tail(time, r.stepping())).plus(r.owed)
 }
 
 // finish makes the tail of the look just taken.
 func (r *Run) finish() {
 	if r.splitter != nil {
-		r.tail = r.splitter.tail(r.Ledger().Time, r.stepping())
+		r.tail = r.splitter.tail(r.Ledger().Time, r.stepping()).plus(r.owed)
 	}
 }
 

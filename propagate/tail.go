@@ -3,6 +3,7 @@ package propagate
 import (
 	"math"
 	"math/cmplx"
+	"slices"
 )
 
 // Tail is what eigenstates of a wave will still send out, lose and hold from a
@@ -223,9 +224,35 @@ func (p *Passage) collect(time, dt float64, term, delay complex128) {
 	p.second += time*time*q + 2*time*first + second
 }
 
+func (p Passage) less(o Passage) Passage {
+	return Passage{p.Probability - o.Probability, p.flux - o.flux, p.first - o.first, p.second - o.second}
+}
+
 // Plus is what has passed in two passages.
 func (p Passage) Plus(o Passage) Passage {
 	return Passage{p.Probability + o.Probability, p.flux + o.flux, p.first + o.first, p.second + o.second}
+}
+
+// less is the difference of two tails in what passes the planes and in the
+// dwell times.
+func (t *Tail) less(o *Tail) *Tail {
+	d := &Tail{Left: t.Left.less(o.Left), Right: t.Right.less(o.Right), Dwell: slices.Clone(t.Dwell)}
+	for i, v := range o.Dwell {
+		d.Dwell[i] -= v
+	}
+	return d
+}
+
+// plus adds to a tail what is owed to it; nil is nothing.
+func (t *Tail) plus(owed *Tail) *Tail {
+	if owed == nil {
+		return t
+	}
+	t.Left, t.Right = t.Left.Plus(owed.Left), t.Right.Plus(owed.Right)
+	for i, v := range owed.Dwell {
+		t.Dwell[i] += v
+	}
+	return t
 }
 
 // TotalLost is what all layers will absorb.
