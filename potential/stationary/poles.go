@@ -82,13 +82,17 @@ func States(ctx context.Context, s *potential.Structure, w Window) (*Survey, err
 		return nil, fmt.Errorf("stationary: the window from %g to %g with widths to %g must lie above the lower lead's height %g", w.From, w.To, w.Widest, lead)
 	}
 	out := &Survey{}
-	const tries = 12
-	for range tries {
+	seeds := f.seeds(ctx, w)
+	const tries, patience = 12, 2
+	spent := 0.0 // in budgets
+	for i := 0; i < tries && spent < patience; i++ {
 		f.allot()
-		f.resonances(ctx, w, out)
+		budget := f.budget
+		f.resonances(ctx, w, seeds, out)
 		if out.Complete || ctx.Err() != nil {
 			break
 		}
+		spent += 1 - float64(f.budget)/float64(budget)
 		w.Widest /= 2
 	}
 	f.allot()
@@ -96,18 +100,23 @@ func States(ctx context.Context, s *potential.Structure, w Window) (*Survey, err
 	return out, ctx.Err()
 }
 
+// seeds are what real energies feel, which is found fastest on the real axis;
+// as far as the search comes.
+func (f *finder) seeds(ctx context.Context, w Window) []Pole {
+	const budget = 30_000
+	poles, _, _ := f.near.Resonances(ctx, w.From, w.To, budget)
+	return poles
+}
+
 // resonances fills the survey with those in the window.
-func (f *finder) resonances(ctx context.Context, w Window, out *Survey) {
+func (f *finder) resonances(ctx context.Context, w Window, seeds []Pole, out *Survey) {
 	out.Window, out.Resonances, out.Counted, out.Complete = w, nil, 0, true
-	// What real energies feel is found fastest on the real axis.
-	seeds, _, err := f.near.Resonances(ctx, w.From, w.To, f.budget/10)
-	if err != nil {
-		seeds = nil
-	}
 	for _, p := range f.pieces(w) {
 		l := f.locator(p.sheet)
 		for _, seed := range seeds {
-			l.offer(complex(seed.Energy, -seed.Width/2), p.rectangle)
+			if z := complex(seed.Energy, -seed.Width/2); p.holds(z) {
+				l.offer(z, p.rectangle)
+			}
 		}
 		counted, err := l.all(ctx, p)
 		out.Complete = out.Complete && err == nil && counted == len(l.zeros)

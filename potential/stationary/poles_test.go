@@ -311,7 +311,7 @@ func TestShortBudgetIsNotComplete(t *testing.T) {
 	f := newFinder(twin(t, 6, 9))
 	f.budget = 30
 	var v Survey
-	f.resonances(context.Background(), Window{0.05, 3, 1}, &v)
+	f.resonances(context.Background(), Window{0.05, 3, 1}, nil, &v)
 	if v.Complete {
 		t.Error("complete with 30 evaluations")
 	}
