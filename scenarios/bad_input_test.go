@@ -324,7 +324,7 @@ func TestUnreadableFiles(t *testing.T) {
 		t.Fatal(err)
 	}
 	for _, c := range []struct{ file, at, key, msg, accepted string }{
-		{"empty.toml", "1:1", "particle.mass", "is missing", "a mass greater than zero is accepted"},
+		{"empty.toml", "1:1", "", "is empty", "a scenario (TOML) is accepted"},
 		{"binary.toml", "1:7", "", "is not UTF-8 text", "UTF-8"},
 		{"latin1.toml", "1:13", "", "is not UTF-8 text", "UTF-8"},
 		{"huge.toml", "0:0", "", "is larger than 16 MiB", "a scenario file"},

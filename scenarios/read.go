@@ -19,7 +19,7 @@ func Read(name string, src io.Reader, open OpenFunc) (*File, error) {
 	r := &reader{file: &File{Name: name, Tolerance: DefaultTolerance, source: string(text)}, open: open}
 	switch {
 	case err == nil && len(bytes.TrimSpace(text)) == 0:
-		err = &fault{msg: "is empty", accepted: "a scenario (TOML) is accepted; 'fluxtoll demos' lists some to start from"}
+		err = &fault{at: 1, msg: "is empty", accepted: "a scenario (TOML) is accepted; 'fluxtoll demos' lists some to start from"}
 	case err == nil:
 		err = r.document(text)
 	}
