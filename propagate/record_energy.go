@@ -47,6 +47,9 @@ func (r *Reader) At(energy float64) Component {
 	s := inversion{pade: r.record.Pade, energy: energy}
 	list := r.record.Stretches
 	for i := range list {
+		if i == len(list)-1 && len(r.states) == 0 {
+			s.early = early(list[i].trace(r.right).Psi)
+		}
 		if !s.add(&list[i], list[i].trace(r.right).Psi, i == 0) {
 			s.rest(list[i-1:], beside(s.last[:], nil))
 			break
@@ -54,6 +57,7 @@ func (r *Reader) At(energy float64) Component {
 		if i == len(list)-1 {
 			s.states(r.states)
 			s.rest(list[i:], beside(s.last[:], r.states))
+			s.compare()
 		}
 	}
 	return s.component()
@@ -70,6 +74,8 @@ type inversion struct {
 	step, slope float64       // of the last stretch that was added
 	theta       float64
 	origin      float64
+	early       int        // sample of the last stretch at which a shorter record would end; 0: none
+	shorter     *inversion // what that says
 }
 
 // add adds a stretch. It refuses one whose steps are too long for the energy,
@@ -86,6 +92,9 @@ func (s *inversion) add(part *Stretch, psi []complex128, first bool) bool {
 		s.shared(part, psi[0], theta, slope)
 	}
 	for n, v := range psi {
+		if n > 0 && n == s.early {
+			s.snapshot(psi[:n+1], n, theta, slope, v*factor)
+		}
 		w := v * factor
 		if n == 0 && !first || n == len(psi)-1 {
 			w /= 2
@@ -100,6 +109,41 @@ func (s *inversion) add(part *Stretch, psi []complex128, first bool) bool {
 	s.last = [2]complex128{psi[max(0, n-1)], psi[n]}
 	s.step, s.slope, s.theta, s.origin = part.Step, slope, theta, part.Origin
 	return true
+}
+
+// early is the last sample of a trace that is twice as large as all of the
+// last few, or 0.
+func early(psi []complex128) int {
+	const few = 8
+	n := len(psi)
+	largest := 0.0
+	for _, v := range psi[max(0, n-few):] {
+		largest = math.Max(largest, square(v))
+	}
+	for n--; n > 0 && !(square(psi[n]) > 4*largest); n-- {
+	}
+	return n
+}
+
+// snapshot keeps what a record says that ends at sample n.
+func (s *inversion) snapshot(psi []complex128, n int, theta, slope float64, w complex128) {
+	c := *s
+	c.early, c.open, c.late = 0, 0, 0
+	c.sum += complex(slope/2, 0) * w
+	c.phase += float64(n) * theta
+	c.time += float64(n) * slope
+	c.last = [2]complex128{psi[n-1], psi[n]}
+	c.slope, c.theta = slope, theta
+	c.rest(nil, lastTwo(c.last))
+	s.shorter = &c
+}
+
+// compare charges the difference to the shorter record: what is left may be of
+// several energies, of which its last fall tells one.
+func (s *inversion) compare() {
+	if s.shorter != nil {
+		s.charge(cmplx.Abs(s.sum-s.shorter.sum), s.time)
+	}
 }
 
 // shared mends the sample that two stretches share. A sum of psi_n exp(i n d)
