@@ -75,9 +75,7 @@ func (s *Scenario) Resonances(ctx context.Context, b Band) (*Resonances, error) 
 	if err != nil {
 		return nil, err
 	}
-	survey, err := stationary.States(ctx, s.Structure, stationary.Window{
-		From: from, To: to, Widest: math.Max(to-from, (from+to)/2-lead),
-	})
+	survey, err := s.survey(ctx, from, to, lead)
 	if err != nil {
 		return nil, fmt.Errorf("resonances: %w", err)
 	}
@@ -87,6 +85,14 @@ func (s *Scenario) Resonances(ctx context.Context, b Band) (*Resonances, error) 
 	}
 	out.Seconds = time.Since(started).Seconds()
 	return out, nil
+}
+
+// survey looks for widths up to that of the window, or up to the energy above
+// the lead in its middle: what is wider is no resonance.
+func (s *Scenario) survey(ctx context.Context, from, to, lead float64) (*stationary.Survey, error) {
+	return stationary.States(ctx, s.Structure, stationary.Window{
+		From: from, To: to, Widest: math.Max(to-from, (from+to)/2-lead),
+	})
 }
 
 // listed brings a survey to display units.
