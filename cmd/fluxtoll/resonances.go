@@ -201,5 +201,5 @@ func elementsText(r *scenarios.Resonances) string {
 		verdict = "the roads DISAGREE"
 	}
 	return fmt.Sprintf("%d of %d states found again on the complex-scaled elements of the packet road, widths to %s of themselves, energies to %s: %s",
-		asked, len(list), brief(width), withUnit(energy, r.Units.Energy), verdict)
+		asked, len(list), brief(width), strings.TrimSpace(brief(energy)+" "+r.Units.Energy), verdict)
 }
