@@ -138,11 +138,12 @@ func (s *inversion) snapshot(psi []complex128, n int, theta, slope float64, w co
 	s.shorter = &c
 }
 
-// compare charges the difference to the shorter record: what is left may be of
-// several energies, of which its last fall tells one.
+// compare charges twice the difference to the shorter record, since which half
+// of what was left has passed: what is left may be of several energies, of
+// which its last fall tells one.
 func (s *inversion) compare() {
 	if s.shorter != nil {
-		s.charge(cmplx.Abs(s.sum-s.shorter.sum), s.time)
+		s.charge(2*cmplx.Abs(s.sum-s.shorter.sum), s.time)
 	}
 }
 

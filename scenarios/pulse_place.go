@@ -30,8 +30,8 @@ func (s *Scenario) Roomy() *Scenario {
 }
 
 // evenWork is how many node solves a pulse may take in steps of one size, and
-// before it is left to the states of a tail: a few seconds.
-const evenWork = 2e8
+// before it is left to the states of a tail: a second or two.
+const evenWork = 5e7
 
 // leftToTail is the part of the tolerance that may be left when a pulse is
 // finished by a tail, in which it has no series.
