@@ -83,7 +83,7 @@ func (t *Trial) shooter() *shooter {
 // may be found at one energy of the band, as a part of their amplitude: a few
 // times what was measured on the demos. They have far higher energies, whose
 // phases in a step fall anywhere.
-const gridShare = 1e-1
+const gridShare = 2e-1
 
 // incoming is the amplitude a(E) of the packet at the near face, of which a
 // packet that moves freely makes psi = integral of a(E) exp(-iEt) dE:
