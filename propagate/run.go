@@ -138,7 +138,7 @@ func (r *Run) lengthen() {
 		r.Lengthen()
 		return
 	}
-	before := r.stepping()
+	before := r.continued()
 	if !r.lengthenFor(r.splitter.rest) {
 		return
 	}
@@ -146,10 +146,18 @@ func (r *Run) lengthen() {
 	r.owed = r.splitter.tail(time, before).less(r.splitter.tail(time, r.stepping())).plus(r.owed)
 }
 
+// continued is how the steps so far are to be continued: exactly, or, after a
+// change of the step, as was reckoned with then.
+func (r *Run) continued() stepping {
+	s := r.stepping()
+	s.exact = r.owed == nil
+	return s
+}
+
 // finish makes the tail of the look just taken.
 func (r *Run) finish() {
 	if r.splitter != nil {
-		r.tail = r.splitter.tail(r.Ledger().Time, r.stepping()).plus(r.owed)
+		r.tail = r.splitter.tail(r.Ledger().Time, r.continued()).plus(r.owed)
 	}
 }
 

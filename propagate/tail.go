@@ -21,7 +21,8 @@ import (
 // are of spectral accuracy because the flow vanishes at both ends, and one
 // that breaks off and goes on as an integral is not. With the factor r by which
 // a step multiplies a pair, the geometric series give the mean delay
-// (dt/2)(1+r)/(1-r) where the integral has 1/lambda.
+// (dt/2)(1+r)/(1-r) where the integral has 1/lambda. A run in steps of one size
+// takes r = exp(-lambda dt), so that no phase error of the step is carried on.
 type Tail struct {
 	Time        float64 // the moment
 	Step        float64 // dt
@@ -50,10 +51,12 @@ type TailError struct {
 	Dwell                 float64
 }
 
-// stepping is how the stepper steps at present.
+// stepping is how the stepper steps at present, or, where exact, steps of the
+// same length without an error of phase.
 type stepping struct {
 	pade       Pade
 	dt, origin float64
+	exact      bool
 }
 
 // change is r-1 for the pair u, v: r = conj(R(z_u)) R(z_v), R the step and
@@ -68,11 +71,22 @@ func (s stepping) change(u, v *Eigenstate) complex128 {
 		return complex(-w.Width()/2*s.dt, -(real(w.Energy)-s.origin)*s.dt)
 	}
 	zu, zv, sum, change := z(u), z(v), -rate(u, v)*complex(s.dt, 0), complex(0, 0)
+	if s.exact {
+		return expm1(sum)
+	}
 	for _, p := range s.pade.Poles {
 		w := complex(2*real(p), 0) * sum / ((zv - p) * cmplx.Conj(zu-p))
 		change += w + change*w
 	}
 	return change
+}
+
+// expm1 is exp(x) - 1.
+func expm1(x complex128) complex128 {
+	if cmplx.Abs(x) > 1e-3 {
+		return cmplx.Exp(x) - 1
+	}
+	return x * (1 + x/2*(1+x/3*(1+x/4*(1+x/5)))) // the next term is x^5/720
 }
 
 // delay is the mean delay of a pair.
@@ -82,7 +96,7 @@ func (s stepping) delay(u, v *Eigenstate) complex128 {
 }
 
 // stepping is that of the present gear.
-func (s *Stepper) stepping() stepping { return stepping{s.Pade, s.Step, s.Origin} }
+func (s *Stepper) stepping() stepping { return stepping{s.Pade, s.Step, s.Origin, false} }
 
 // splitter splits waves of one mesh into eigenstates and a rest.
 type splitter struct {

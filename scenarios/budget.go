@@ -73,7 +73,12 @@ func (t *Trial) timeTerm() errorSet {
 			slope = 1
 		}
 		transmitted, reflected := s.arrivals(p.geometry)
-		e.dwell += s.weight * s.Dwell * slope
+		dwell := s.Dwell
+		if t.Run.Tail() != nil { // which has no error of phase
+			end := t.Run.Tail().Time
+			transmitted, reflected, dwell = math.Min(transmitted, end), math.Min(reflected, end), math.Min(dwell, end)
+		}
+		e.dwell += s.weight * dwell * slope
 		if m.transmitted > leastPart {
 			e.arrivalTransmitted += s.weight * s.Transmission * transmitted * slope / m.transmitted
 		}

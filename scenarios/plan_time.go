@@ -54,6 +54,9 @@ func (p *planner) step(pade propagate.Pade) float64 {
 	for timeError(p.samples, pade, dt, p.Origin) > goal {
 		dt *= 0.5
 	}
+	for len(p.States) > 0 && p.lateError(pade, dt) > goal {
+		dt *= 0.85
+	}
 	return dt
 }
 

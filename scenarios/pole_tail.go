@@ -8,11 +8,10 @@ import (
 	"fluxtoll/propagate"
 )
 
-// A run is finished by poles where one of them, at the end of the prompt part,
-// still holds more than exp(-worthPoles) of what it did; then all resonances are
-// taken that hold more than exp(-stillThere).
+// A run is finished by the poles that, at the end of the prompt part, still hold
+// more than exp(-stillThere) of what they did, unless they are more than
+// mostPoles.
 const (
-	worthPoles = 8
 	stillThere = 25
 	mostPoles  = 200
 )
@@ -22,8 +21,8 @@ const (
 // resonance whose state is not found is waited for.
 func (p *planner) poles() {
 	end := p.expectedEnd(p.averages.Resonances)
-	slow := p.outlasting(end, stillThere)
-	if len(p.outlasting(end, worthPoles)) == 0 || len(slow) > mostPoles {
+	slow := p.outlasting(end)
+	if len(slow) > mostPoles {
 		return
 	}
 	for _, r := range slow {
@@ -34,11 +33,11 @@ func (p *planner) poles() {
 	}
 }
 
-// outlasting lists the resonances that hold more than exp(-decay) at a time.
-func (p *planner) outlasting(end, decay float64) []stationary.Pole {
+// outlasting lists the resonances that are still there at a time.
+func (p *planner) outlasting(end float64) []stationary.Pole {
 	var out []stationary.Pole
 	for _, r := range p.averages.Resonances {
-		if r.Width*end < decay {
+		if r.Width*end < stillThere {
 			out = append(out, r)
 		}
 	}
@@ -83,6 +82,23 @@ func (s *sample) forgetDelays(taken []stationary.Pole) {
 	if 4*share > math.Max(math.Abs(s.GroupDelayReflected), math.Abs(s.GroupDelayTransmitted)) {
 		s.GroupDelayReflected, s.GroupDelayTransmitted = 0, 0
 	}
+}
+
+// lateError is the relative error that the step makes in the mean times where
+// late parts may have energies of their own: each energy weighs with its time,
+// as far as the run will follow it.
+func (p *planner) lateError(pade propagate.Pade, dt float64) float64 {
+	var wrong errorSet
+	m := p.means(p.geometry)
+	for _, s := range p.samples {
+		e := s.weight * math.Abs(pade.SlopeError((s.energy-p.Origin)*dt))
+		transmitted, reflected := s.arrivals(p.geometry)
+		wrong.dwell += e * math.Min(s.Dwell, p.Expected)
+		wrong.arrivalTransmitted += e * s.Transmission * math.Min(transmitted, p.Expected)
+		wrong.arrivalReflected += e * s.Reflection * math.Min(reflected, p.Expected)
+	}
+	_, relative := wrong.magnitudes(m).relative(p.averages, m)
+	return phaseSafety * relative
 }
 
 // poleTail charges what the states of a tail are not known to, and what they
