@@ -16,6 +16,7 @@ func report(r *scenarios.Result) string {
 	b.WriteString(quantityTable(r) + "\n")
 	for _, p := range []struct{ label, text string }{
 		{"ledger", ledgerText(r)},
+		{"tail", tailText(r)},
 		{"budget", budgetText(r.Budget)},
 		{"planes", planesText(r)},
 		{"numerics", numericsText(r)},
