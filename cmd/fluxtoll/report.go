@@ -148,8 +148,11 @@ func planesText(r *scenarios.Result) string {
 		return ""
 	}
 	at := func(x float64) string { return withUnit(x, r.Units.Length) }
-	return fmt.Sprintf("near %s, start %s, far %s; structure from 0 to %s",
-		at(r.Planes.Near), at(r.Planes.Start), at(r.Planes.Far), at(r.Planes.Width))
+	text := fmt.Sprintf("near %s, start %s, far %s", at(r.Planes.Near), at(r.Planes.Start), at(r.Planes.Far))
+	if r.Planes.Width > 0 {
+		text += "; structure from 0 to " + at(r.Planes.Width)
+	}
+	return text
 }
 
 func numericsText(r *scenarios.Result) string {
