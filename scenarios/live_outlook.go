@@ -9,28 +9,29 @@ import (
 // Outlook is what is known of a trial before its packet moves, in display
 // units.
 type Outlook struct {
-	Title     string
-	Units     Units
-	Tolerance float64
-	Side      Side
-	Width     float64   // of the structure
-	Faces     []float64 // of all layers, from 0 to Width
-	Deltas    []float64 // positions of delta layers
-	Lossy     bool
-	Energy    float64 // mean energy of the packet
-	Spread    float64 // standard deviation of its energy, to first order
-	Planes    *PlanesAt
-	From, To  float64 // ends of the grid's real axis
-	Fringe    float64 // distance of the interference fringes before the structure
-	Duration  float64 // expected end of the run, when next to nothing is left
-	Event     float64 // when what can be seen with the eye is over; at most Duration
-	Top       float64 // largest density at the start
-	Contact   float64 // time of the first contact
-	Predicted Ledger  // averages; Trapped and Closure are 0
-	Arrivals  Arrivals
-	Shifts    []Shift
-	Spectrum  Spectrum
-	Refused   string // why the packet road was refused
+	Title      string
+	Units      Units
+	Tolerance  float64
+	Side       Side
+	Width      float64   // of the structure
+	Faces      []float64 // of all layers, from 0 to Width
+	Deltas     []float64 // positions of delta layers
+	Lossy      bool
+	Energy     float64 // mean energy of the packet
+	Spread     float64 // standard deviation of its energy, to first order
+	Planes     *PlanesAt
+	From, To   float64 // ends of the grid's real axis
+	Fringe     float64 // distance of the interference fringes before the structure
+	Duration   float64 // expected end of the run, when next to nothing is left
+	Event      float64 // when what can be seen with the eye is over; at most Duration
+	Top        float64 // largest density at the start
+	Contact    float64 // time of the first contact
+	Predicted  Ledger  // averages; Trapped and Closure are 0
+	Arrivals   Arrivals
+	Shifts     []Shift
+	Spectrum   Spectrum
+	Resonances []SeenResonance // in the packet's band, in ascending energy
+	Refused    string          // why the packet road was refused
 }
 
 // Arrivals are predicted mean times at the planes, nil where nothing arrives.
@@ -53,7 +54,7 @@ func newOutlook(t *Trial) *Outlook {
 		Energy: s.Packet.Energy * unit.Energy, Spread: s.energySpread() * unit.Energy,
 		Fringe:    math.Pi / s.Packet.K0 * unit.Length,
 		Predicted: Ledger{Reflected: t.Averages.Reflected.Value, Transmitted: t.Averages.Transmitted.Value, Lost: t.Averages.Lost.Value},
-		Spectrum:  t.spectrum(),
+		Spectrum:  t.spectrum(), Resonances: s.seenResonances(),
 	}
 	o.Faces = append(o.Faces, 0)
 	for _, span := range s.Structure.Layers {
