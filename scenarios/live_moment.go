@@ -44,7 +44,10 @@ type Moment struct {
 
 // Flows are mean outward flows through both planes, probability per time, in
 // bins that end at Ends; the first begins at 0.
-type Flows struct{ Ends, Near, Far []float64 }
+type Flows struct {
+	Ends, Near, Far       []float64
+	NearEchoes, FarEchoes []Echo // parts of each, where it is split
+}
 
 // Moment looks at the present tick through a window.
 func (l *Live) Moment(w Window) *Moment {
@@ -68,16 +71,18 @@ func (l *Live) Moment(w Window) *Moment {
 	return m
 }
 
-// flows copies the history.
+// flows copies the history and marks the parts of split pulses.
 func (l *Live) flows(m *Moment) {
 	unit := l.Trial.Scenario.Scale.Time
 	m.First, m.Whole = l.history.first.shown(unit), l.history.whole.shown(unit)
+	m.First.mark(l.Outlook.Arrivals)
+	m.Whole.mark(l.Outlook.Arrivals)
 }
 
 // shown is a history in display units.
 func (p passages) shown(unit float64) Flows {
 	n := len(p.ends)
-	f := Flows{make([]float64, n), make([]float64, n), make([]float64, n)}
+	f := Flows{Ends: make([]float64, n), Near: make([]float64, n), Far: make([]float64, n)}
 	begin := 0.0
 	for i, end := range p.ends {
 		f.Ends[i] = end * unit
