@@ -37,6 +37,7 @@ type lane struct {
 	mean            *float64
 	top             float64
 	flight          string // what free stands for
+	echoes          []scenarios.Echo
 }
 
 func (a arrivals) draw() {
@@ -57,9 +58,9 @@ func (a arrivals) draw() {
 func (a arrivals) lanes() (far, near lane) {
 	p, flows := a.outlook.Arrivals, a.flows()
 	far = lane{name: "far", flux: flows.Far, style: canvas.Right, predicted: p.Transmitted, free: p.FreeTransmitted,
-		mean: a.measured("arrival_transmitted"), top: p.PeakTransmitted, flight: "free flight"}
+		mean: a.measured("arrival_transmitted"), top: p.PeakTransmitted, flight: "free flight", echoes: flows.FarEchoes}
 	near = lane{name: "near", flux: flows.Near, style: canvas.Left, predicted: p.Reflected, free: p.FreeReflected,
-		mean: a.measured("arrival_reflected"), top: p.PeakReflected, flight: "from a hard wall"}
+		mean: a.measured("arrival_reflected"), top: p.PeakReflected, flight: "from a hard wall", echoes: flows.NearEchoes}
 	if a.outlook.Side == scenarios.FromRight {
 		far.style, near.style = near.style, far.style
 	}
@@ -94,17 +95,24 @@ func (a arrivals) lane(l lane) {
 	a.mark(l, l.free, 4)
 	a.fill(l)
 	a.mark(l, l.predicted, 1)
+	a.echoes(l)
 	l.Box = head
 	a.caption(l)
+}
+
+// scale holds the highest flow so far and the one expected.
+func (a arrivals) scale(l lane) scale {
+	s := scale{top: l.top, log: a.log}
+	for _, v := range l.flux {
+		s.top = math.Max(s.top, v)
+	}
+	return s
 }
 
 // fill draws the flow up to the present, the largest in each column of dots.
 func (a arrivals) fill(l lane) {
 	wide, high := l.Dots()
-	s := scale{top: l.top, log: a.log}
-	for _, v := range l.flux {
-		s.top = math.Max(s.top, v)
-	}
+	s := a.scale(l)
 	if s.top <= 0 || l.predicted == nil {
 		return // rounding, if anything
 	}

@@ -34,6 +34,11 @@ func fixtureOutlook() *scenarios.Outlook {
 			{Part: "reflected", Total: 4, Structure: 3.5, Filter: 0.5, Error: 1e-7, Free: 396.5},
 		},
 		Spectrum: scenarios.Spectrum{From: 90, To: 210},
+		Resonances: []scenarios.SeenResonance{
+			{Energy: 75.5, Width: 0.5, Lifetime: 1316.4},
+			{Energy: 152.25, Width: 2.125, Lifetime: 309.75, EnergyError: 1e-9, WidthError: 0.01, LifetimeError: 0.02},
+			{Energy: 900, Width: 20, Lifetime: 32.9},
+		},
 	}
 	for i := range 128 {
 		e := 90 + 120*float64(i)/127
@@ -105,8 +110,12 @@ func fixture(columns int, ended bool) *player.Frame {
 	for i := range 200 {
 		t := m.Reached * float64(i+1) / 200
 		m.First.Ends = append(m.First.Ends, t)
-		m.First.Far = append(m.First.Far, 0.4*gaussian(t, 210, 38))
+		m.First.Far = append(m.First.Far, 0.4*gaussian(t, 210, 38)+0.08*gaussian(t, 450, 38))
 		m.First.Near = append(m.First.Near, 0.6*gaussian(t, 400, 40))
+	}
+	m.First.FarEchoes = []scenarios.Echo{
+		{Number: 1, Time: 210, Height: 0.4 * gaussian(0, 0, 38)}, {Number: 2, Time: 450, Height: 0.08 * gaussian(0, 0, 38)},
+		{Number: 3, Time: 455, Height: 0.001}, {Number: 4, Time: 2000, Height: 0.001},
 	}
 	m.Whole = m.First
 	return &player.Frame{Scenario: 1, Moment: m, Outlook: o, Tick: 0.5, Pace: 1, Paused: ended}

@@ -27,7 +27,7 @@ func (h heights) dots(e float64, high int) int {
 }
 
 // profile draws the course of the height and, against it, the mean energy as
-// a line and its spread as two dotted ones.
+// a line and its spread as two dotted ones, and the resonances.
 func (s stage) profile(b canvas.Box) {
 	b.Plot()
 	wide, high := b.Dots()
@@ -53,7 +53,9 @@ func (s stage) profile(b canvas.Box) {
 	}
 	label := withUnit(fmt.Sprintf("%s ± %s", short(o.Energy), short2(o.Spread)), o.Units.Energy)
 	row := (high - h.dots(o.Energy, high)) / 4
-	b.Text(2, row, canvas.Faint, " "+label+" ")
+	s.levels(b, h)
+	x := b.Text(2, row, canvas.Faint, " "+label+" ")
+	s.nearest(b, x+1, row)
 }
 
 // short2 writes a number with two digits.
