@@ -57,18 +57,36 @@ func (s stage) span() (from, to int) {
 	return at(0), at(s.outlook.Width)
 }
 
+// wideInside is the width in cells from which there is room for words within the
+// structure.
+const wideInside = 60
+
+// room is the longest piece of a line, from a column on, before or behind the
+// structure, or within it if that is wide.
+func (s stage) room(x, wide int) (start, end int) {
+	from, to := s.span()
+	from, to = max(0, from/2), min(wide, to/2)
+	places := [][2]int{{x, min(from, wide) - 1}, {max(x, to+2), wide - 1}}
+	if to-from >= wideInside {
+		places = append(places, [2]int{max(x, from+3), to - 3})
+	}
+	best := [2]int{x, x}
+	for _, p := range places {
+		if p[1]-p[0] > best[1]-best[0] {
+			best = p
+		}
+	}
+	return best[0], best[1]
+}
+
 // nearest writes what is known of the resonance nearest the mean energy in a
-// line, from a column on, beside the structure where there is more room.
+// line, from a column on.
 func (s stage) nearest(b canvas.Box, x, row int) {
 	n := s.outlook.Nearest()
 	if n == nil {
 		return
 	}
-	from, to := s.span()
-	end := max(x, min(from/2-1, b.Wide-1))
-	if right := max(x, to/2+2); b.Wide-1-right > end-x {
-		x, end = right, b.Wide-1
-	}
+	x, end := s.room(x, b.Wide)
 	for _, text := range s.resonance(n) {
 		if utf8.RuneCountInString(text) <= end-x {
 			b.Text(x, row, canvas.Faint, text)
