@@ -117,6 +117,10 @@ func (t *Trial) perPart(time, dwell float64) errorSet {
 	return e
 }
 
+// slowest is the power of t that a flow is trusted to fall with at most: what
+// remains may beat, and for a moment seem to fall faster.
+const slowest = 4
+
 // tail charges what remains between the planes to every part, and what may
 // still flow through the planes to and fro: near a threshold, waves beyond the
 // far plane return. Both come later than now, by about the time in which what
@@ -126,16 +130,17 @@ func (t *Trial) perPart(time, dwell float64) errorSet {
 // never leave.
 func (t *Trial) tail(l *propagate.Ledger, remaining, lifetime float64) errorSet {
 	lifetime = math.Min(lifetime, l.Time)
+	reach := math.Max(lifetime, l.Time/slowest)
 	m := t.means()
 	leaving := math.Max(0, remaining-2*t.stray())
-	moving := math.Max(leaving, t.Run.Flow*lifetime) + t.Run.Cross
-	late := moving * math.Abs(l.Time+lifetime-math.Min(m.timeTransmitted, m.timeReflected))
+	moving := math.Max(leaving, t.Run.Flow*reach) + t.Run.Cross
+	late := moving * math.Abs(l.Time+reach-math.Min(m.timeTransmitted, m.timeReflected))
 	inLayers := 0.0
 	for _, p := range l.InLayer {
 		inLayers += p
 	}
 	e := t.perPart(2*late, math.Min(inLayers, leaving)*lifetime+leaving*t.Averages.Dwell.Value)
-	e.transmitted, e.reflected, e.lost = moving, moving, leaving
+	e.transmitted, e.reflected, e.lost = 2*moving, 2*moving, 2*leaving
 	return e
 }
 

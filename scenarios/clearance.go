@@ -15,10 +15,10 @@ import (
 // d the distance from the centre to the cut. The averages of the change are
 // computed with their sign, since for smooth amplitudes its oscillation in k
 // cancels, and for a narrow resonance it does not. The front's cut is charged
-// four times, and with its largest effect on any probability: what lies beyond
+// six times, and with its largest effect on any probability: what lies beyond
 // it is not missing, but it is no incoming wave either, and may end anywhere.
 func (p *planner) startError(g geometry) errorSet {
-	front := p.cutError(g, g.start).times(4)
+	front := p.cutError(g, g.start).times(6)
 	most := math.Max(front.transmitted, math.Max(front.reflected, front.lost))
 	front.transmitted, front.reflected, front.lost = most, most, most
 	back := p.cutError(g, g.behind-g.start)
@@ -53,7 +53,7 @@ func (p *planner) slowest(g geometry) errorSet {
 // that of the front, exp(-d^2/(4 length^2)); the factors bound what was
 // measured on wells, barriers and point potentials at the longest step.
 func (p *planner) mismatch(g geometry) errorSet {
-	const inLayers, atPlanes = 0.5, 1e-3
+	const inLayers, atPlanes = 2, 2e-3
 	d := g.start / p.scenario.Packet.Length
 	front, m := math.Exp(-d*d/4), p.means(g)
 	e := errorSet{dwell: inLayers * front * p.averages.Dwell.Value}

@@ -116,7 +116,7 @@ func (t *Trial) ending() propagate.Ending {
 // longer steps misplace it in time.
 const (
 	slowFrom   = 10
-	lengthened = 5e-3
+	lengthened = 0.01
 )
 
 // mayLengthen reports whether what remains is little enough for longer steps.

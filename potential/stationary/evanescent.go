@@ -30,26 +30,43 @@ func (s *Solver) Beyond(spectrum Spectrum, distance float64) (Mean, error) {
 	}
 	deepest := math.Sqrt(2 * s.far.Mass * step)
 	total, from := Mean{}, 0.0
-	for _, to := range beyondPanels(distance, deepest) {
-		value, half, err := s.beyondPanel(spectrum, distance, from, to)
-		if err != nil {
+	for _, to := range beyondEnds(distance, deepest) {
+		if err := s.beyondPanels(spectrum, distance, from, to, &total, 0); err != nil {
 			return Mean{}, err
 		}
-		total.Value += value
-		total.Error += math.Abs(value - half)
 		from = to
 	}
 	return total, nil
 }
 
-// beyondPanels ends panels in kappa at 1/(2 distance), doubled on and on to
+// beyondEnds ends panels in kappa at 1/(2 distance), doubled on and on to
 // where exp(-2 kappa distance) is 1e-17 or the incident lead closes.
-func beyondPanels(distance, deepest float64) []float64 {
+func beyondEnds(distance, deepest float64) []float64 {
 	var ends []float64
 	for k := 0.5 / distance; k < min(deepest, 20/distance); k *= 2 {
 		ends = append(ends, k)
 	}
 	return append(ends, min(deepest, 20/distance))
+}
+
+// beyondPanels adds a panel, halved until both rules agree: a state that the
+// far lead confines is a narrow line in kappa.
+func (s *Solver) beyondPanels(p Spectrum, distance, from, to float64, total *Mean, depth int) error {
+	const close, deepest = 1e-10, 25
+	value, half, err := s.beyondPanel(p, distance, from, to)
+	if err != nil {
+		return err
+	}
+	if off := math.Abs(value - half); off <= close*math.Abs(total.Value+value) || depth == deepest {
+		total.Value += value
+		total.Error += off
+		return nil
+	}
+	mid := (from + to) / 2
+	if err := s.beyondPanels(p, distance, from, mid, total, depth+1); err != nil {
+		return err
+	}
+	return s.beyondPanels(p, distance, mid, to, total, depth+1)
 }
 
 // beyondPanel integrates one panel with 24 points and with 12. With
