@@ -45,7 +45,14 @@ beyond ASCII is shown.`,
 		Args:              atMostOne,
 		ValidArgsFunction: completeScenario,
 		RunE: func(cmd *cobra.Command, args []string) error {
-			if cmd.Flags().Changed("frames") || cmd.Flags().Changed("size") {
+			if _, err := colorDepth(flags.color, os.Getenv); err != nil {
+				return err
+			}
+			frames := cmd.Flags().Changed("frames")
+			if cmd.Flags().Changed("size") && !frames {
+				return hinted(cmd, "--size is the size of plain frames: it needs --frames")
+			}
+			if frames {
 				return printFrames(cmd, args, flags)
 			}
 			return watch(cmd, args, flags)
