@@ -44,6 +44,25 @@ func (p *planner) slowest(g geometry) errorSet {
 	if m.reflected > leastPart {
 		e.arrivalReflected = late * (g.start + g.near) / m.reflected
 	}
+	return e.plus(p.hardlyMoving(g).magnitudes(m))
+}
+
+// hardlyMoving is what components below a thousandth of the mean wave number
+// add to the averages of times. A shape that holds a state at its threshold
+// delays them without bound; no run waits for them.
+func (p *planner) hardlyMoving(g geometry) errorSet {
+	const share = 1e-3
+	var e errorSet
+	for _, n := range p.averages.Nodes {
+		if n.K > share*p.k0 {
+			break
+		}
+		s := sample{Amplitudes: n.Amplitudes}
+		t, r := s.arrivals(g)
+		e.dwell += n.Weight * s.Dwell
+		e.arrivalTransmitted += n.Weight * s.Transmission * math.Abs(t)
+		e.arrivalReflected += n.Weight * s.Reflection * math.Abs(r)
+	}
 	return e
 }
 
