@@ -6,7 +6,7 @@ import "math"
 // filtered it.
 func (r *ShiftRoads) reading(part string) string {
 	total, structure, filter := r.Total.Average, r.Structure.Average, r.Filter.Average+r.ExitLead.Average
-	noise := 3*math.Max(r.Total.Error, r.Structure.Error) + 1e-9*math.Abs(r.Free)
+	noise := 3*r.Total.Error + 1e-9*math.Abs(r.Free)
 	comes := "what is " + part + " comes " + side(total, noise, "later than in free flight", "earlier than in free flight", "as in free flight")
 	why := "the filter"
 	if math.Abs(r.ExitLead.Average) > math.Abs(r.Filter.Average) {
