@@ -69,11 +69,16 @@ func (e slips) reflected(c propagate.Component, in, size float64) (slip, shift f
 // sum adds what the end of the record and rounding do. An error of amplitude
 // e that passes at another time moves the delay by e/|t| times the difference.
 func (e slips) sum(c propagate.Component, now, in, size float64) (slip, shift float64) {
-	open := c.Open / in
-	slip = now + open + e.noise
-	late := now*math.Abs(c.Time) + open*(math.Abs(c.Late)+math.Abs(c.Time)) + e.noise*e.end
+	open, noise := shotSafety*c.Open/in, shotSafety*e.noise
+	now *= shotSafety
+	slip = now + open + noise
+	late := now*math.Abs(c.Time) + open*(math.Abs(c.Late)+math.Abs(c.Time)) + noise*e.end
 	return slip, ratio(late*weakSafety(size), math.Max(0, size-slip))
 }
+
+// shotSafety covers what these estimates were found too small by near narrow
+// resonances and at the ends of the band.
+const shotSafety = 3
 
 // weakSafety goes from 1 to 4 for amplitudes below a tenth. Near a zero of an
 // amplitude its delay was found off by twice the sum of the errors above.
