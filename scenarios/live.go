@@ -82,7 +82,7 @@ func (l *Live) refine() error {
 		return nil
 	}
 	fine := *l.Trial
-	stepper, err := propagate.NewStepper(p.Mesh, p.Pade, p.TimeStep/float64(l.ticks), p.Origin, l.Trial.packet())
+	stepper, err := propagate.NewStepper(p.Mesh, p.Pade, p.TimeStep/float64(l.ticks), p.Origin, p.packet())
 	if err != nil {
 		return err
 	}
@@ -97,15 +97,6 @@ func (l *Live) align() {
 	if l.between != l.Trial {
 		l.between.Run.Follow(l.Trial.Run.Stepper)
 	}
-}
-
-// packet is the packet at t = 0, as the packet road takes it.
-func (t *Trial) packet() propagate.Packet {
-	k0 := t.Scenario.Packet.K0
-	if t.Plan.side == FromRight {
-		k0 = -k0
-	}
-	return propagate.Packet{Centre: t.Plan.at(t.Plan.start), Length: t.Scenario.Packet.Length, K0: k0}
 }
 
 // stepOf is the step at or before a tick, and how many ticks lie between.

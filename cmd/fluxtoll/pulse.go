@@ -38,11 +38,10 @@ than run places them, so that single energies can be told.`,
 		Args:              exactly(1, "one argument is wanted, a scenario file, a demo or -"),
 		ValidArgsFunction: completeScenario,
 		RunE: func(cmd *cobra.Command, args []string) error {
-			file, err := openScenario(args[0], cmd.InOrStdin())
-			if err != nil {
-				return err
+			if f.asJSON && f.csv != "" {
+				return hinted(cmd, "--csv and --json exclude each other")
 			}
-			scenario, forced, err := prepare(file, &force)
+			scenario, forced, err := prepare(args[0], cmd.InOrStdin(), &force)
 			if err != nil {
 				return err
 			}
@@ -53,7 +52,6 @@ than run places them, so that single energies can be told.`,
 	cmd.Flags().Var(&f.csv, "csv", "print a `TABLE` as CSV: flow (against time) or energy")
 	cmd.Flags().Lookup("csv").NoOptDefVal = string(csvFlow)
 	cmd.Flags().Var(&f.points, "points", "number `N` of energies")
-	cmd.MarkFlagsMutuallyExclusive("json", "csv")
 	force.add(cmd)
 	return cmd
 }

@@ -31,11 +31,7 @@ where the scenario is in natural units.`,
 		Args:              exactly(1, "one argument is wanted, a scenario file, a demo or -"),
 		ValidArgsFunction: completeScenario,
 		RunE: func(cmd *cobra.Command, args []string) error {
-			file, err := openScenario(args[0], cmd.InOrStdin())
-			if err != nil {
-				return err
-			}
-			scenario, forced, err := prepare(file, &force)
+			scenario, forced, err := prepare(args[0], cmd.InOrStdin(), &force)
 			if err != nil {
 				return err
 			}
@@ -47,8 +43,12 @@ where the scenario is in natural units.`,
 	return cmd
 }
 
-// prepare applies the flags and compiles the scenario.
-func prepare(file *scenarios.File, force *forcing) (*scenarios.Scenario, scenarios.Forced, error) {
+// prepare opens a scenario, applies the flags and compiles it.
+func prepare(name string, stdin io.Reader, force *forcing) (*scenarios.Scenario, scenarios.Forced, error) {
+	file, err := openScenario(name, stdin)
+	if err != nil {
+		return nil, scenarios.Forced{}, err
+	}
 	if err := force.change(file); err != nil {
 		return nil, scenarios.Forced{}, err
 	}
