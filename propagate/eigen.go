@@ -26,6 +26,7 @@ type Eigenstate struct {
 	mesh *Mesh
 	wave
 	left, right rim
+	width       float64
 }
 
 // eigenSteps bounds the steps of Newton's method. It converges quadratically;
@@ -65,9 +66,7 @@ func (m *Mesh) Eigenstate(guess complex128) (*Eigenstate, error) {
 // and is absorbed per time over what is inside: unlike the imaginary
 // part of Energy it keeps its relative accuracy however small it is. For a bound
 // state it is 0 but for rounding.
-func (u *Eigenstate) Width() float64 {
-	return (u.FlowLeft() + u.FlowRight() + u.Absorbed()) / u.Inside()
-}
+func (u *Eigenstate) Width() float64 { return u.width }
 
 // Bound reports whether nothing can leave the state: both leads are closed at
 // its energy, and no layer absorbs.
@@ -236,6 +235,7 @@ func (s *eigenSolver) state(energy complex128) *Eigenstate {
 	u.Norm = m.product(u.wave, u.wave)
 	u.left, u.right = m.rims(u.wave, energy)
 	u.Residual = m.residual(u.wave, energy)
+	u.width = (u.FlowLeft() + u.FlowRight() + u.Absorbed()) / u.Inside()
 	return u
 }
 
